@@ -105,6 +105,26 @@ export function loadTails(): readonly {
   }));
 }
 
+/** Probabilities of one cohort in an awkward region; ranges are half-open [from, to) whole days, ages in days. */
+export interface CellCase {
+  readonly name: string;
+  readonly family: string;
+  readonly parameters: Parameters;
+  readonly cohort: readonly [number, number];
+  readonly cutOff: number;
+  readonly cells: readonly (readonly [number, number])[];
+  readonly delay: number;
+  /** Null is without a limit. */
+  readonly warranty: number | null;
+  readonly cellProbabilities: readonly number[];
+  readonly survivorProbability: number;
+  readonly logSurvivorProbability: number;
+}
+
+export function loadCells(): readonly CellCase[] {
+  return readJson<{ readonly cases: readonly CellCase[] }>('cells.json').cases;
+}
+
 interface StoredDataSet extends Omit<DataSet, 'ages'> {
   readonly exact: readonly (readonly [age: number, quantity: number])[];
   readonly between: readonly (readonly [from: number, to: number, quantity: number])[];
