@@ -1,0 +1,39 @@
+import { type Complaint, invalid } from './check.js';
+import { pathText } from './path.js';
+import type { Rules } from './products.js';
+
+/** Rules laid over each other key by key, the later over the earlier, the flags over all. */
+export function layRules(layers: readonly Rules[], flags: Rules): Rules {
+  const settings: Rules = Object.assign({}, ...layers);
+  const sameDelay = flags.delayDays === undefined || flags.delayDays === (settings.delayDays ?? 0);
+  const reason = sameDelay ? {} : { delayReason: 'given on the command line, by --delay-days' };
+  return { ...settings, ...flags, ...reason };
+}
+
+/**
+ * What no single key shows: a delay without a reason or beyond the warranty, a cost without a currency. Only keys of
+ * `said`, the product's own words, are complained about; the others are under `*`.
+ * @param laid the rules as they will hold.
+ */
+export function rulesComplaints(product: string, said: Rules, laid: Rules): Complaint[] {
+  const says = (...keys: readonly (keyof Rules)[]) => keys.some((key) => key in said);
+  const path = (key: keyof Rules) => ['products', product, key];
+  const delay = laid.delayDays ?? 0;
+  const complaints: Complaint[] = [];
+  if (says('delayDays', 'delayReason') && delay > 0 && !laid.delayReason) {
+    complaints.push(missing(path('delayReason'), 'delayDays', 'say why units cannot come back earlier'));
+  }
+  if (says('costPerReturn', 'currency') && laid.costPerReturn && !laid.currency) {
+    complaints.push(missing(path('currency'), 'costPerReturn', 'add the code of the currency, such as EUR'));
+  }
+  const limit = Math.min((laid.warrantyMonths ?? Infinity) * 31, laid.warrantyDays ?? Infinity);
+  if (says('delayDays', 'warrantyDays', 'warrantyMonths') && delay >= limit) {
+    complaints.push(invalid(path('delayDays'), delay, 'less than the warranty lasts'));
+  }
+  return complaints;
+}
+
+function missing(path: readonly string[], neededBy: string, remedy: string): Complaint {
+  const message = `missing ${pathText(path)}, needed by ${neededBy}`;
+  return { code: 'missing-value', message, remedy, path: [...path.slice(0, -1), neededBy], at: 'value' };
+}
