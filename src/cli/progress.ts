@@ -2,7 +2,7 @@ import { performance } from 'node:perf_hooks';
 import type { Writable } from 'node:stream';
 import { SingleBar } from 'cli-progress';
 import type { Progress } from '../records.js';
-import { printable } from './text.js';
+import { printable } from './print/text.js';
 
 /** A view of the progress that has to be put away before anything else is printed. */
 export interface ProgressView {

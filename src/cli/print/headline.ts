@@ -1,0 +1,48 @@
+import type { ForecastDocument, PredictedCount } from '../../records.js';
+import { intervalText, levelText } from './forecast.js';
+import { nameOf } from './names.js';
+import { alignColumns, countText, shorten } from './text.js';
+
+type Block = Pick<ForecastDocument['total'], 'periods' | 'untilWarrantyEnds'>;
+
+/** The numbers that a month end is about: next period, horizon and until warranty ends, in total and by product. */
+export function headlineText(document: ForecastDocument): string {
+  const { total, products } = document;
+  const names =
+    total.productsIncluded.length === 1 ? '1 product' : `${total.productsIncluded.length} products`;
+  const lines = headlines(total).map(({ label, count }) => {
+    const intervals = document.levels.map((level) => `${levelText(level)}: ${intervalText(count, level)}`);
+    return [`  ${label}`, countText(count.expected), `(${intervals.join('; ')})`];
+  });
+  const title = `expected returns of ${names}${document.asOf === null ? '' : ` after ${document.asOf}`}`;
+  const sentences = [title, ...alignColumns(lines, ['left', 'right', 'left'])];
+  return `${[...sentences, ...(products.length > 1 ? ['', ...byProduct(document)] : [])].join('\n')}\n`;
+}
+
+/** One row a product, with the widest interval asked for. */
+function byProduct(document: ForecastDocument): string[] {
+  const level = document.levels.at(-1) ?? 0.95;
+  const labels = headlines(document.total).map(({ label }) => label);
+  const head = ['by product', ...labels.flatMap((label) => [label, levelText(level)])];
+  const rows = document.products.map((product) => [
+    shorten(nameOf(product), 24),
+    ...(product.notForecast === null
+      ? headlines(product).flatMap(({ count }) => [countText(count.expected), intervalText(count, level)])
+      : ['not forecast']),
+  ]);
+  return alignColumns([head, ...rows], ['left', ...head.slice(1).map(() => 'right' as const)]);
+}
+
+function headlines(block: Block): { label: string; count: PredictedCount }[] {
+  const next = block.periods.find((period) => !period.partial);
+  const last = block.periods.at(-1);
+  return [
+    ...(next === undefined ? [] : [{ label: next.period, count: next }]),
+    ...(last === undefined || last === next
+      ? []
+      : [{ label: `through ${last.period}`, count: last.cumulative }]),
+    ...(block.untilWarrantyEnds === null
+      ? []
+      : [{ label: 'until warranty ends', count: block.untilWarrantyEnds }]),
+  ];
+}
