@@ -1,4 +1,4 @@
-import { addMonths, type PeriodKind } from './calendar.js';
+import { addMonths, type PeriodKind, parseIsoDate } from './calendar.js';
 
 /** How the files of one kind of record are read. */
 export interface InputConfig {
@@ -82,4 +82,12 @@ export function warrantyLimit(rules: ProductRules, shipFrom: number): number {
   const months =
     rules.warrantyMonths === null ? Infinity : addMonths(shipFrom, rules.warrantyMonths) - shipFrom;
   return Math.min(months, rules.warrantyDays ?? Infinity);
+}
+
+/** The cut-off, the moment at which the as-of day ends, as a day number. @throws RangeError without an as-of date. */
+export function cutOffOf(config: Config): number {
+  const day = config.asOf === null ? null : parseIsoDate(config.asOf);
+  if (day === null)
+    throw new RangeError(`missing as-of date ${config.asOf}, records with a calendar need one`);
+  return day + 1;
 }

@@ -1,6 +1,113 @@
-import type { Config } from '../config.js';
-import type { FitProduct, ProductRecords } from '../records.js';
+import { type Config, cutOffOf, rulesOf } from '../config.js';
+import { familyNamed } from '../families/index.js';
+import type { CandidateFit, Curve, Finding, FitProduct, NotForecast, ProductRecords } from '../records.js';
+import { rankCandidates } from './choice.js';
+import { fitFamilies, typicalAges } from './maximum.js';
+import { nonparametricEstimate } from './nonparametric.js';
+import { withChosenShares } from './selection.js';
+import { layTerms, type Terms, termsOf } from './terms.js';
 
-export function fitProduct(_config: Config, _records: ProductRecords): FitProduct {
-  throw new Error('being written');
+/** Refits behind `chosenShare`. */
+const selectionRefits = 200;
+const curvePoints = 61;
+
+/** Fits every candidate to one product, ranks them and chooses one; what cannot be forecast says why. */
+export function fitProduct(config: Config, records: ProductRecords): FitProduct {
+  const terms = termsOf(config, records);
+  const rules = rulesOf(config, records.product);
+  const oldestAge = oldestAgeOf(config, records);
+  const candidates = terms.returns === 0 ? [] : fitCandidates(config, records, terms);
+  const notForecast = reasonNot(records, terms, candidates);
+  return {
+    product: records.product,
+    segment: records.segment,
+    resolution: records.resolution,
+    ...unitCounts(records),
+    oldestAge,
+    delayDays: rules.delayDays,
+    delayReason: rules.delayReason,
+    warrantyMonths: rules.warrantyMonths,
+    warrantyDays: rules.warrantyDays,
+    chosen: notForecast === null ? (candidates[0]?.family ?? null) : null,
+    notForecast,
+    findings: findingsOf(candidates),
+    candidates,
+    nonparametric: nonparametricEstimate(config, records),
+    curves: candidates
+      .filter((candidate) => candidate.converged)
+      .map((candidate) => curve(candidate, oldestAge, rules.delayDays)),
+  };
+}
+
+/** The seed words of a product's random numbers: they depend on nothing but the seed and the product itself. */
+export function seedOf(config: Config, records: ProductRecords): (string | number)[] {
+  return [config.seed, records.product, JSON.stringify(records.segment)];
+}
+
+function fitCandidates(config: Config, records: ProductRecords, terms: Terms): CandidateFit[] {
+  const problem = { terms, laid: layTerms(terms, 'fit'), ages: typicalAges(terms) };
+  const ranked = rankCandidates(fitFamilies(problem, config.candidates.map(familyNamed)), terms.returns);
+  return withChosenShares(terms, ranked, selectionRefits, seedOf(config, records));
+}
+
+function reasonNot(
+  records: ProductRecords,
+  terms: Terms,
+  candidates: readonly CandidateFit[],
+): NotForecast | null {
+  if (records.unusable !== null) return records.unusable;
+  if (terms.returns === 0) {
+    const message =
+      'no returns in the records, so nothing can be fitted; forecast it by hand or with a similar product';
+    return { code: 'no-returns', message };
+  }
+  if (candidates.some((candidate) => candidate.ruledOut === null)) return null;
+  const few = candidates.every((candidate) => candidate.ruledOut?.code === 'too-few-returns');
+  const reasons = [...new Set(candidates.map((candidate) => candidate.ruledOut?.message))].join('; ');
+  return few
+    ? {
+        code: 'too-few-returns',
+        message: `only ${terms.returns} returns, too few for any candidate; wait for more or record similar products as one`,
+      }
+    : { code: 'no-usable-fit', message: `every candidate is ruled out: ${reasons}` };
+}
+
+function unitCounts(
+  records: ProductRecords,
+): Pick<FitProduct, 'units' | 'returns' | 'withdrawn' | 'survivors'> {
+  const sum = (items: readonly { readonly quantity: number }[]) =>
+    items.reduce((n, item) => n + item.quantity, 0);
+  const aged = (outcome: string) => sum(records.ages.filter((group) => group.outcome === outcome));
+  const shipped = records.cohorts.reduce((n, cohort) => n + cohort.shipped, 0);
+  const returns = sum(records.returned) + aged('returned');
+  const withdrawn = sum(records.withdrawn);
+  const units = shipped + aged('returned') + aged('surviving');
+  return { units, returns, withdrawn, survivors: units - returns - withdrawn };
+}
+
+function oldestAgeOf(config: Config, records: ProductRecords): number {
+  if (records.resolution === 'age')
+    return records.ages.reduce((oldest, group) => Math.max(oldest, group.to), 0);
+  const first = records.cohorts[0];
+  return first === undefined ? 0 : cutOffOf(config) - first.from;
+}
+
+function findingsOf(candidates: readonly CandidateFit[]): Finding[] {
+  const shape = candidates.find((candidate) => candidate.family === 'weibull')?.parameters.shape;
+  if (shape === undefined || shape <= 20) return [];
+  const message =
+    `the Weibull shape is ${shape.toFixed(1)}, above 20: look for a wrong time origin, mixed units or too few returns, ` +
+    'and prefer a normal or lognormal distribution (common practice)';
+  return [{ code: 'steep-shape', severity: 'warning', message }];
+}
+
+/** Share returned by age, from 0 to one and a half times the oldest age. */
+function curve(candidate: CandidateFit, oldestAge: number, delay: number): Curve {
+  const family = familyNamed(candidate.family);
+  const life = family.at(
+    family.free(family.parameterNames.map((name) => candidate.parameters[name] as number)),
+  );
+  const ages = Array.from({ length: curvePoints }, (_, i) => (1.5 * oldestAge * i) / (curvePoints - 1));
+  const probability = ages.map((age) => (age > delay ? Math.exp(life.logCdf(age - delay)) : 0));
+  return { family: candidate.family, atRisk: candidate.atRisk, ages, probability };
 }

@@ -1,0 +1,126 @@
+import type { DayRange } from '../calendar.js';
+import { type AgeGrid, knotAt } from './grid.js';
+
+/**
+ * The chance that a unit which returns at a given age is counted in a window: SPEC's mean over the unknown day of
+ * shipment, as a function of age. At most quadratic between its knots; ages beyond `cap` never count.
+ */
+export interface Window {
+  readonly knots: readonly number[];
+  /** From 0 up to this age the weight is 1 (0 when it is nowhere 1 from the start on). */
+  readonly full: number;
+  /** From this age on it is 0. */
+  readonly end: number;
+  readonly weight: (age: number) => number;
+  /** Two windows with the same key are equal. */
+  readonly key: string;
+}
+
+/** Returns up to the moment `until`, of units shipped within `shipped`, with warranty to age `cap`. */
+export function returnedBy(shipped: DayRange, until: number, cap: number): Window {
+  const [near, far] = [until - shipped.to, until - shipped.from];
+  return {
+    knots: [near, far, cap],
+    full: Math.min(near, cap),
+    end: Math.min(far, cap),
+    weight: (age) => clamp((far - age) / (far - near)),
+    key: `b ${near} ${far} ${far <= cap ? '' : cap}`,
+  };
+}
+
+/** Returns within the moments `range`. */
+export function returnedWithin(shipped: DayRange, range: DayRange, cap: number): Window {
+  const before = returnedBy(shipped, range.from, cap);
+  const after = returnedBy(shipped, range.to, cap);
+  return {
+    knots: [...before.knots, ...after.knots],
+    full: 0,
+    end: after.end,
+    weight: (age) => after.weight(age) - before.weight(age),
+    key: `c ${range.from - shipped.from} ${after.key}`,
+  };
+}
+
+/** Returns before a withdrawal that happens at a moment uniform over `range`. */
+export function returnedBeforeExit(shipped: DayRange, range: DayRange, cap: number): Window {
+  const [near, far] = [range.from - shipped.to, range.to - shipped.from];
+  const widths = (shipped.to - shipped.from) * (range.to - range.from);
+  const corners = [range.from - shipped.from, range.to - shipped.to];
+  const square = (x: number) => (x > 0 ? (x * x) / 2 : 0);
+  return {
+    knots: [near, ...corners, far, cap],
+    full: Math.min(Math.max(0, near), cap),
+    end: Math.min(far, cap),
+    weight: (age) =>
+      clamp(
+        (square(far - age) -
+          square((corners[0] as number) - age) -
+          square((corners[1] as number) - age) +
+          square(near - age)) /
+          widths,
+      ),
+    key: `w ${near} ${corners[0]} ${corners[1]} ${far} ${far <= cap ? '' : cap}`,
+  };
+}
+
+/** Windows laid on a grid: weight 1 on the first `full` intervals, then one row of three coefficients an interval. */
+export interface LaidWindows {
+  readonly count: number;
+  /** By window: intervals with weight 1 from the start, and the rows that follow them. */
+  readonly full: Int32Array;
+  /** Row r of window w is interval firstInterval[w] + (r − firstRow[w]). */
+  readonly firstRow: Int32Array;
+  readonly firstInterval: Int32Array;
+  /** By row: coefficients of the left, right and middle integrals. */
+  readonly left: Float64Array;
+  readonly right: Float64Array;
+  readonly middle: Float64Array;
+  /** False when every middle coefficient is 0. */
+  readonly curved: boolean;
+}
+
+/** Lays windows on a grid whose knots hold all of theirs. */
+export function layWindows(windows: readonly Window[], grid: AgeGrid): LaidWindows {
+  const full = new Int32Array(windows.length);
+  const firstRow = new Int32Array(windows.length + 1);
+  const firstInterval = new Int32Array(windows.length);
+  const rows: [number, number, number][] = [];
+  windows.forEach((window, w) => {
+    full[w] = window.full > grid.delay ? knotAt(grid, window.full) : 0;
+    let interval = full[w] as number;
+    const last = window.end > grid.delay ? knotAt(grid, window.end) : 0;
+    while (interval < last && isZero(coefficients(window, grid, interval))) interval++;
+    firstInterval[w] = interval;
+    firstRow[w] = rows.length;
+    for (; interval < last; interval++) rows.push(coefficients(window, grid, interval));
+  });
+  firstRow[windows.length] = rows.length;
+  const column = (i: 0 | 1 | 2) => Float64Array.from(rows, (row) => row[i]);
+  const curved = rows.some((row) => row[2] !== 0);
+  return {
+    count: windows.length,
+    full,
+    firstRow,
+    firstInterval,
+    left: column(0),
+    right: column(1),
+    middle: column(2),
+    curved,
+  };
+}
+
+/** Values at the interval's ends, and what the middle has above their mean. */
+function coefficients(window: Window, grid: AgeGrid, interval: number): [number, number, number] {
+  const [a, b] = [grid.knots[interval] as number, grid.knots[interval + 1] as number];
+  const [left, right] = [window.weight(a), window.weight(b)];
+  const bulge = window.weight(0.5 * (a + b)) - 0.5 * (left + right);
+  return [left, right, Math.abs(bulge) < 1e-12 ? 0 : bulge];
+}
+
+function isZero(row: readonly number[]): boolean {
+  return row.every((coefficient) => coefficient === 0);
+}
+
+function clamp(x: number): number {
+  return Math.max(0, Math.min(1, x));
+}
