@@ -18,7 +18,7 @@ const broken: Readonly<Record<string, readonly (readonly [path: string, text: st
     ['reserve/a.ts', "type X = import('../assess/b.js').X;"],
     ['forecast/a.ts', "import {\n  x, // the one\n  y,\n} from '../fit/b.js';"],
   ],
-  'report imports neither fit nor forecast': [
+  'report imports neither fit, forecast nor families': [
     ['report/a.ts', "import type { X } from '../forecast/b.js';"],
     ['report/a.ts', "const { fit } = await import('../fit/b.js');"],
     ['report/charts/a.ts', "import { weibull } from '../../families/weibull.js';"],
