@@ -1,0 +1,117 @@
+/** Fitted curves against the nonparametric estimate, ready to draw. */
+import { max } from 'd3-array';
+import { scaleLinear } from 'd3-scale';
+import { line } from 'd3-shape';
+import { daysPerMonth } from '../calendar.js';
+import type { Curve, FitProduct, NonparametricPoint } from '../records.js';
+import { frame, svgNumber, type Tick } from './axis.js';
+import { candidateName, isChosen } from './candidates.js';
+import { countText, measureText, percentText, tickText } from './numbers.js';
+
+/** View of charts/curves.hbs; null when there is neither a point nor a curve. @param ageUnit null: days, shown in months. */
+export function curvesChart(id: string, fit: FitProduct, ageUnit: string | null) {
+  if (fit.curves.length === 0 && fit.nonparametric.length === 0) return null;
+  const place = placing(fit, ageUnit === null ? daysPerMonth : 1);
+  const unit = ageUnit ?? 'month';
+  const chosen = fit.curves.filter((curve) => isChosen(fit, curve));
+  const others = fit.curves.filter((curve) => !isChosen(fit, curve));
+  return {
+    id,
+    title: 'Share returned by age, fitted and observed',
+    description: describe(fit, place, unit),
+    frame,
+    xTicks: ageTicks(place),
+    yTicks: shareTicks(place),
+    others: others.map((curve) => ({ name: candidateName(curve), path: curvePath(curve, place) })),
+    chosen: chosen.map((curve) => ({ name: candidateName(curve), path: curvePath(curve, place) })),
+    points: fit.nonparametric.map((point) => pointMark(point, place, unit)),
+    unit,
+    table: pointsTable(fit, place),
+    legend: legend(fit, chosen, others),
+  };
+}
+
+interface Placing {
+  /** Age in percent of the width. */
+  readonly x: ReturnType<typeof scaleLinear<number, number>>;
+  readonly y: ReturnType<typeof scaleLinear<number, number>>;
+  /** Days in the unit that ages are shown in. */
+  readonly unitLength: number;
+}
+
+/** The upper bound of a thin last point may be far above; the axis then ends at half above the highest estimate. */
+function placing(fit: FitProduct, unitLength: number): Placing {
+  const ages = [...fit.nonparametric.map((p) => p.age), ...fit.curves.flatMap((c) => c.ages)];
+  const chosen = fit.curves.filter((curve) => isChosen(fit, curve)).flatMap((curve) => curve.probability);
+  const high = max([...fit.nonparametric.map((p) => p.probability), ...chosen]) ?? 0;
+  const top = Math.min(1, 1.5 * high, Math.max(high, max(fit.nonparametric, (p) => p.upper) ?? 0));
+  return {
+    x: scaleLinear([0, (max(ages) ?? 1) / unitLength], [0, 100]),
+    y: scaleLinear([0, top > 0 ? top : 0.01], [frame.bottom, frame.top]).nice(5),
+    unitLength,
+  };
+}
+
+function ageTicks({ x }: Placing): readonly Tick[] {
+  const wide = x.ticks(8);
+  const narrow = new Set(x.ticks(4));
+  return wide.map((age) => ({ at: svgNumber(x(age)), label: tickText(age), wideOnly: !narrow.has(age) }));
+}
+
+function shareTicks({ y }: Placing): readonly Tick[] {
+  return y.ticks(5).map((share) => ({ at: svgNumber(y(share)), label: percentText(share), wideOnly: false }));
+}
+
+function curvePath(curve: Curve, { x, y, unitLength }: Placing): string | null {
+  return line<number>()
+    .x((_, i) => (x((curve.ages[i] ?? 0) / unitLength) / 100) * frame.pathWidth)
+    .y((probability) => y(probability))
+    .digits(2)(curve.probability);
+}
+
+function pointMark(point: NonparametricPoint, { x, y, unitLength }: Placing, unit: string) {
+  const age = point.age / unitLength;
+  return {
+    x: svgNumber(x(age)),
+    y: svgNumber(y(point.probability)),
+    lower: svgNumber(y(point.lower)),
+    upper: svgNumber(Math.max(y(point.upper), frame.top - 6)),
+    label: `${measureText(age)} ${unit}: ${percentText(point.probability)} returned`,
+  };
+}
+
+function pointsTable(fit: FitProduct, { unitLength }: Placing) {
+  return fit.nonparametric.map((point) => ({
+    age: measureText(point.age / unitLength),
+    probability: percentText(point.probability),
+    interval: `${percentText(point.lower)} to ${percentText(point.upper)}`,
+    atRisk: countText(point.atRisk),
+    fitted: percentText(chosenAt(fit, point.age)),
+  }));
+}
+
+/** The chosen curve where it was evaluated; null between its ages, which this page does not compute. */
+function chosenAt(fit: FitProduct, age: number): number | null {
+  const curve = fit.curves.find((c) => isChosen(fit, c));
+  const i = curve?.ages.indexOf(age) ?? -1;
+  return curve?.probability[i] ?? null;
+}
+
+function legend(fit: FitProduct, chosen: readonly Curve[], others: readonly Curve[]) {
+  const entry = (kind: string, label: string, shown: boolean) => (shown ? [{ kind, label }] : []);
+  return [
+    ...entry('point', 'nonparametric estimate with its interval', fit.nonparametric.length > 0),
+    ...chosen.flatMap((curve) => entry('chosen', `${candidateName(curve)}, chosen`, true)),
+    ...entry('other', `not chosen: ${others.map(candidateName).join(', ')}`, others.length > 0),
+  ];
+}
+
+function describe(fit: FitProduct, { unitLength }: Placing, unit: string): string {
+  const last = fit.nonparametric.at(-1);
+  const fitted = fit.chosen === null ? '' : ` The strong line is the chosen distribution, ${fit.chosen}.`;
+  if (last === undefined) return `Lines show the share of units returned by age in ${unit}s.${fitted}`;
+  const age = `${measureText(last.age / unitLength)} ${unit}s`;
+  const range = `${percentText(last.lower)} to ${percentText(last.upper)}`;
+  const share = `${percentText(last.probability)}, interval ${range}`;
+  return `Points show the share of units returned by age: by ${age} of age ${share}.${fitted}`;
+}

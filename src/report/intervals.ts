@@ -1,0 +1,29 @@
+/** Intervals of a predicted count, read from its quantiles and put into words. */
+import type { PredictedCount } from '../records.js';
+import { countText, percentText, rangeText } from './numbers.js';
+
+/** The two-sided interval at a level in (0, 1); null where its quantiles are not among those kept. */
+export function intervalOf(
+  count: PredictedCount,
+  level: number,
+): { lower: number | null; upper: number | null } {
+  const at = (probability: number) => count.quantiles[quantileKey(probability)] ?? null;
+  return { lower: at((1 - level) / 2), upper: at((1 + level) / 2) };
+}
+
+/** `between 24 and 39 (80 %)`. */
+export function betweenText(count: PredictedCount, level: number): string {
+  const { lower, upper } = intervalOf(count, level);
+  return `between ${countText(lower)} and ${countText(upper)} (${percentText(level)})`;
+}
+
+/** `24 to 39`. */
+export function intervalText(count: PredictedCount, level: number): string {
+  const { lower, upper } = intervalOf(count, level);
+  return rangeText(lower, upper);
+}
+
+/** The key of a probability in `quantiles`: six decimals at most, no trailing zeros. */
+function quantileKey(probability: number): string {
+  return String(Number(probability.toFixed(6)));
+}
