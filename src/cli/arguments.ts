@@ -44,12 +44,12 @@ export function parseArguments(words: readonly string[], version: string): Reque
   return invocation === null ? { text } : { invocation };
 }
 
-/** The help of a command, or of the program for null. */
-export function helpText(command: CommandName | null): string {
+/** The help of a command, or of the program for null and for a name that is none. */
+export function helpText(name: string | null): string {
   const program = describeProgram('', () => {});
-  return (
-    (program.commands.find((c) => c.name() === command) ?? program).helpInformation() + commandHelp(command)
-  );
+  const command = program.commands.find((described) => described.name() === name);
+  const examples = commandHelp(command === undefined ? null : (name as CommandName));
+  return (command ?? program).helpInformation() + examples;
 }
 
 type Options = Readonly<Record<string, string | string[] | boolean | undefined>>;
@@ -78,7 +78,7 @@ function describeProgram(version: string, action: (command: CommandName, options
       .allowExcessArguments()
       .helpOption(false)
       .action(() => {
-        throw notBuilt(`command ${name}`);
+        throw notBuilt(`command ${name}`, `it has ${Object.keys(commands).join(', ')}`);
       });
   }
   return program;
@@ -90,7 +90,7 @@ function optionsOf(name: CommandName): Option[] {
     ...inputOptions.map(([flags, text]) => new Option(flags, text).helpGroup('Inputs:')),
     ...choiceOptions.map(([flags, text]) => new Option(flags, text).helpGroup('Choices:')),
     new Option('--fail-on <condition>').hideHelp().argParser(() => {
-      throw notBuilt('option --fail-on');
+      throw notBuilt('option --fail-on', 'leave it out');
     }),
     ...(report ? [new Option('--single-file', 'put the pages of the products into index.html')] : []),
     new Option('--out <dir>', report ? 'folder to write (default: returnfall-out)' : 'folder to write'),
@@ -153,16 +153,16 @@ function workerCount(text: string): number {
 }
 
 function usageFault(error: CommanderError): UserError {
-  const [message = '', hint = ''] = error.message.replace(/^error: /, '').split('\n');
+  const [said = '', hint = ''] = error.message
+    .replace(/^error: /, '')
+    .replace(/\.$/, '')
+    .split('\n');
+  const message = said.startsWith('unknown') ? said : `invalid command line: ${said}`;
   const remedy = hint === '' ? 'see returnfall --help' : hint.replace(/^\((.*)\?\)$/, '$1?').toLowerCase();
-  return new UserError(
-    { code: 'usage', message: message.replace(/\.$/, ''), remedy },
-    exitCodes.unusableSettings,
-  );
+  return new UserError({ code: 'usage', message, remedy }, exitCodes.unusableSettings);
 }
 
-function notBuilt(what: string): UserError {
+function notBuilt(what: string, remedy: string): UserError {
   const message = `unknown ${what}: this version does not have it`;
-  const remedy = `it has the commands ${Object.keys(commands).join(', ')}`;
   return new UserError({ code: 'not-built', message, remedy }, exitCodes.unusableSettings);
 }

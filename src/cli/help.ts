@@ -37,20 +37,26 @@ export function commandHelp(command: CommandName | null): string {
 
 const exitLines = [
   'Exit codes:',
-  '0 done, 1 fault of the program, 2 command line, settings or output folder, 3 input not usable',
-  'or nothing forecast, 4 done but some products not forecast, 130 and 143 stopped by a signal',
+  '0  done',
+  '1  a fault of the program',
+  '2  the command line, the settings or the output folder cannot be used',
+  '3  the input cannot be used, or no product could be forecast',
+  '4  done, but some products could not be forecast; they are named',
+  '130, 143  stopped by a signal; earlier output is as it was',
 ];
 
 const examples: Readonly<Record<CommandName | 'program', readonly string[]>> = {
   program: [
-    'returnfall run --shipments shipped.csv --returns returned.csv --as-of 2026-10-31 --warranty-months 24',
+    'returnfall run --shipments shipped.csv --returns returned.csv \\',
+    '    --as-of 2026-10-31 --warranty-months 24',
     'returnfall run                     (with a returnfall.json in this folder)',
     'returnfall run --help              (inputs, choices and examples of a command)',
   ],
   table: [
     'returnfall table --shipments "shipped-*.csv" --returns returned.csv --as-of 2026-10-31',
     'returnfall table --settings month-end/returnfall.json --out october',
-    'gunzip -c shipped.csv.gz | returnfall table --shipments - --returns returned.csv --as-of 2026-10-31',
+    'export-shipments | returnfall table --shipments - --returns returned.csv \\',
+    '    --as-of 2026-10-31',
   ],
   fit: [
     'returnfall fit --shipments shipped.csv --returns returned.csv --as-of 2026-10-31',
@@ -58,7 +64,8 @@ const examples: Readonly<Record<CommandName | 'program', readonly string[]>> = {
     'returnfall fit --ages bearings.csv',
   ],
   forecast: [
-    'returnfall forecast --shipments shipped.csv --returns returned.csv --as-of 2026-10-31 --horizon 6',
+    'returnfall forecast --shipments shipped.csv --returns returned.csv \\',
+    '    --as-of 2026-10-31 --horizon 6',
     'returnfall forecast --from october --levels 0.5,0.9 --json',
     'returnfall forecast --settings returnfall.json --period quarter --horizon 4 --out october',
   ],
@@ -67,7 +74,8 @@ const examples: Readonly<Record<CommandName | 'program', readonly string[]>> = {
     'returnfall report --from october --single-file --out for-mailing',
   ],
   run: [
-    'returnfall run --shipments shipped.csv --returns returned.csv --as-of 2026-10-31 --warranty-months 24',
+    'returnfall run --shipments shipped.csv --returns returned.csv \\',
+    '    --as-of 2026-10-31 --warranty-months 24',
     'returnfall run --settings month-end/returnfall.json --out october',
     'returnfall run --from october --horizon 24 --out october-two-years',
   ],
