@@ -1,4 +1,5 @@
 import type { Config } from './config.js';
+import { drawsForForecast } from './fit/drawn.js';
 import { fitProduct } from './fit/product.js';
 import { forecastProduct, type ProductDraws } from './forecast/product.js';
 import { totalForecast } from './forecast/total.js';
@@ -43,7 +44,10 @@ export const tasks = {
     readonly config: Config;
     readonly records: ProductRecords;
     readonly fit: FitProduct;
-  }): ProductDraws => forecastProduct(input.config, input.records, input.fit),
+  }): ProductDraws => {
+    const draws = drawsForForecast(input.config, input.records, input.fit);
+    return forecastProduct(input.config, input.records, input.fit, draws);
+  },
 };
 export type Tasks = typeof tasks;
 export type TaskName = keyof Tasks;

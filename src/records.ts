@@ -98,7 +98,9 @@ export type SetAsideCode =
   | 'repeat-return'
   | 'beyond-warranty'
   | 'before-delay'
-  | 'before-first-use';
+  | 'before-first-use'
+  /** A plan for a period that is over. */
+  | 'before-as-of';
 
 /** A row that is not used, kept in rejects.csv. */
 export interface RejectRow {
@@ -286,6 +288,21 @@ export interface FitDocument {
   readonly products: readonly FitProduct[];
 }
 
+/** Draws of a candidate's parameters: what the fit leaves open, and what the predictive counts start from. */
+export interface ParameterDraws {
+  readonly family: string;
+  /** Draw b is free coordinates b·k … b·k + k − 1. */
+  readonly free: Float64Array;
+  readonly k: number;
+  readonly kind: 'pivotal' | 'direct';
+  /** Refits that failed and were made again. */
+  readonly restarted: number;
+  /** Seed words of the product, for the draws that follow. */
+  readonly seed: readonly (string | number)[];
+  /** What a reader should know of how the draws were made. */
+  readonly findings: readonly Finding[];
+}
+
 /** A count to come. Keys of `quantiles` are probabilities, `"0.025"`. */
 export interface PredictedCount {
   /** Mean of the predictive distribution. */
@@ -352,7 +369,7 @@ export interface ForecastProduct {
 export interface ForecastMethod {
   readonly draws: number;
   /** `pivotal` (generalised pivotal quantity) or `direct` (the weighted refits themselves). */
-  readonly parameters: 'pivotal' | 'direct';
+  readonly parameters: ParameterDraws['kind'];
   /** Draws that failed and were made again. */
   readonly restarted: number;
   readonly counts: 'multinomial';

@@ -1,18 +1,9 @@
 import type { Family } from '../families/family.js';
 import { type Maximum, maximise } from '../math/maximise.js';
 import { gammaDraw, randomStream } from '../math/random.js';
+import type { ParameterDraws } from '../records.js';
 import { logLikelihood } from './likelihood.js';
 import { type LaidTerms, layTerms, type Terms } from './terms.js';
-
-/** Parameter draws, the uncertainty of a fit. */
-export interface ParameterDraws {
-  /** Draw b is free coordinates b·k … b·k + k − 1. */
-  readonly free: Float64Array;
-  readonly k: number;
-  readonly kind: 'pivotal' | 'direct';
-  /** Refits that failed and were made again with new weights. */
-  readonly restarted: number;
-}
 
 /** A candidate whose refits fail more often than this is not used for intervals. */
 export const allowedFailures = 0.01;
@@ -30,7 +21,7 @@ export function parameterDraws(
   best: Float64Array,
   draws: number,
   seed: readonly (string | number)[],
-): ParameterDraws | null {
+): Omit<ParameterDraws, 'findings'> | null {
   const k = best.length;
   const free = new Float64Array(draws * k);
   const refit = refitter(terms, layTerms(terms, 'draw'), family);
@@ -45,7 +36,14 @@ export function parameterDraws(
     }
     free.set(family.logLocationScale ? pivotal(best, centre, point) : shifted(best, centre, point), b * k);
   }
-  return { free, k, kind: family.logLocationScale ? 'pivotal' : 'direct', restarted };
+  return {
+    family: family.name,
+    free,
+    k,
+    kind: family.logLocationScale ? 'pivotal' : 'direct',
+    restarted,
+    seed,
+  };
 }
 
 /** The maximum for given weights, from a start; null when the refit fails. */

@@ -1,0 +1,109 @@
+import { type Config, cutOffOf, rulesOf, warrantyLimit } from '../config.js';
+import { ageGrid } from '../exposure/grid.js';
+import { integralsOn, windowProbability } from '../exposure/integrals.js';
+import { layWindows, returnedBy, type Window } from '../exposure/window.js';
+import type { Family } from '../families/family.js';
+import type { Cell, HistoryPeriod, ProductRecords } from '../records.js';
+import { firstAndLast, pastColumns } from './columns.js';
+
+/**
+ * Shipped and returned units by period up to the as-of date, and what a distribution expects of the units as they stood
+ * at the start of each period: Σ units at risk · P(period) / S(start). Null family: no expectation. A record that
+ * straddles periods counts in the period of its last day.
+ */
+export function historyOf(
+  config: Config,
+  records: ProductRecords,
+  chosen: { readonly family: Family; readonly free: Float64Array } | null,
+): HistoryPeriod[] {
+  const first = records.cohorts[0];
+  if (first === undefined) return [];
+  const columns = pastColumns(config, first.from);
+  const periodAt = (day: number) => columns.findIndex(({ days }) => day < days.to);
+  const shipped = new Float64Array(columns.length);
+  const returned = new Float64Array(columns.length);
+  for (const cohort of records.cohorts) add(shipped, periodAt(lastDay(config, cohort.to)), cohort.shipped);
+  for (const cell of records.returned) add(returned, periodAt(lastDay(config, cell.to)), cell.quantity);
+  const ends = [first.from, ...columns.map(({ days }) => days.to)];
+  const fitted = chosen === null ? null : expectedByPeriod(config, records, chosen, ends);
+  return columns.map(({ label, days }, j) => ({
+    period: label,
+    ...firstAndLast(days),
+    shipped: shipped[j] as number,
+    returned: returned[j] as number,
+    fitted: fitted === null ? null : (fitted[j] as number),
+  }));
+}
+
+function expectedByPeriod(
+  config: Config,
+  records: ProductRecords,
+  chosen: { readonly family: Family; readonly free: Float64Array },
+  ends: readonly number[],
+): Float64Array {
+  const expected = new Float64Array(ends.length - 1);
+  const outside = survivalAt(config, records, chosen, ends);
+  const exits = exitsByCohort(records);
+  records.cohorts.forEach((cohort, i) => {
+    let atRisk = cohort.shipped;
+    const gone = exits[i] as Cell[];
+    for (let j = 0, next = 0; j + 1 < ends.length; j++) {
+      for (; next < gone.length && (gone[next] as Cell).to <= (ends[j] as number); next++) {
+        atRisk -= (gone[next] as Cell).quantity;
+      }
+      const [before, after] = [outside(i, j), outside(i, j + 1)];
+      if (before > 0) add(expected, j, (atRisk * (before - after)) / before);
+    }
+  });
+  return expected;
+}
+
+/** Survival of cohort i to moment j. */
+function survivalAt(
+  config: Config,
+  records: ProductRecords,
+  { family, free }: { readonly family: Family; readonly free: Float64Array },
+  moments: readonly number[],
+): (i: number, j: number) => number {
+  const rules = rulesOf(config, records.product);
+  const windows = new Map<string, Window>();
+  const keys = records.cohorts.map((cohort) =>
+    moments.map((moment) => {
+      const window = returnedBy(cohort, moment, warrantyLimit(rules, cohort.from));
+      windows.set(window.key, window);
+      return window.key;
+    }),
+  );
+  const list = [...windows.values()];
+  const grid = ageGrid(
+    list.flatMap((window) => window.knots),
+    rules.delayDays,
+    'draw',
+  );
+  const laid = layWindows(list, grid);
+  const integrals = integralsOn(grid, 0, false);
+  integrals.evaluate(family.jetsAt(free));
+  const block = new Float64Array(1);
+  const survival = new Map<string, number>();
+  list.forEach((window, w) => {
+    windowProbability(laid, w, integrals, 'outside', block);
+    survival.set(window.key, block[0] as number);
+  });
+  return (i, j) => survival.get(keys[i]?.[j] ?? '') ?? 1;
+}
+
+/** Returned and withdrawn cells by cohort, in the order of their ends. */
+function exitsByCohort(records: ProductRecords): Cell[][] {
+  const exits: Cell[][] = records.cohorts.map(() => []);
+  for (const cell of [...records.returned, ...records.withdrawn]) exits[cell.cohort]?.push(cell);
+  for (const list of exits) list.sort((a, b) => a.to - b.to);
+  return exits;
+}
+
+function lastDay(config: Config, to: number): number {
+  return Math.min(to, cutOffOf(config)) - 1;
+}
+
+function add(to: Float64Array, j: number, value: number): void {
+  to[j] = (to[j] as number) + value;
+}
