@@ -61,6 +61,7 @@ function describeProgram(version: string, action: (command: CommandName, options
     .version(version, '--version', 'print the version')
     .helpOption('--help', 'print this help')
     .helpCommand(false)
+    .configureHelp({ helpWidth: 80 })
     .addHelpText('after', commandHelp(null));
   for (const [name, description] of Object.entries(commands) as [CommandName, string][]) {
     const command = program.command(name).description(description).allowExcessArguments(false);

@@ -53,14 +53,17 @@ const examples: Readonly<Record<CommandName | 'program', readonly string[]>> = {
     'returnfall run --help              (inputs, choices and examples of a command)',
   ],
   table: [
-    'returnfall table --shipments "shipped-*.csv" --returns returned.csv --as-of 2026-10-31',
+    'returnfall table --shipments "shipped-*.csv" --returns returned.csv \\\\',
+    '    --as-of 2026-10-31',
     'returnfall table --settings month-end/returnfall.json --out october',
     'export-shipments | returnfall table --shipments - --returns returned.csv \\',
     '    --as-of 2026-10-31',
   ],
   fit: [
-    'returnfall fit --shipments shipped.csv --returns returned.csv --as-of 2026-10-31',
-    'returnfall fit --table table.csv --as-of 2026-10-31 --candidates weibull,lognormal',
+    'returnfall fit --shipments shipped.csv --returns returned.csv \\\\',
+    '    --as-of 2026-10-31',
+    'returnfall fit --table table.csv \\\\',
+    '    --as-of 2026-10-31 --candidates weibull,lognormal',
     'returnfall fit --ages bearings.csv',
   ],
   forecast: [

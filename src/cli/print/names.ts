@@ -1,10 +1,11 @@
+import { segmentText } from '../../ledger/names.js';
 import type { Segment } from '../../records.js';
 import { printable } from './text.js';
 
 /** A product as a terminal shows it: `HV-200` or `HV-200 (plant=X)`. */
 export function nameOf(named: { readonly product: string; readonly segment: Segment | null }): string {
-  const parts = Object.entries(named.segment ?? {}).map(([column, value]) => `${column}=${value}`);
-  return printable(parts.length === 0 ? named.product : `${named.product} (${parts.join('; ')})`);
+  const segment = segmentText(named.segment);
+  return printable(segment === '' ? named.product : `${named.product} (${segment})`);
 }
 
 /** A candidate as a terminal shows it: `weibull` or `weibull, share at risk`. */
