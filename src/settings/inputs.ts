@@ -49,7 +49,7 @@ export function inputComplaints(said: Said): Complaint[] {
 }
 
 const nothing: Complaint = {
-  code: 'missing-input',
+  code: 'missing-records',
   message: 'missing shipments, table or ages',
   remedy: 'name the files in the settings or by --shipments, --table or --ages',
   path: [],
@@ -63,7 +63,13 @@ function clash(key: keyof Said, other: Input): Complaint {
 
 function lacks(key: keyof Said, needed: Input): Complaint {
   const message = `missing ${needed}, needed by ${key}`;
-  return { code: 'missing-input', message, remedy: `add ${needed} or remove ${key}`, path: [key], at: 'key' };
+  return {
+    code: 'missing-records',
+    message,
+    remedy: `add ${needed} or remove ${key}`,
+    path: [key],
+    at: 'key',
+  };
 }
 
 function secondFile(input: 'table' | 'tableWithdrawn', said: Said): Complaint[] {

@@ -18,22 +18,27 @@ export function layRules(layers: readonly Rules[], flags: Rules): Rules {
 export function rulesComplaints(product: string, said: Rules, laid: Rules): Complaint[] {
   const says = (...keys: readonly (keyof Rules)[]) => keys.some((key) => key in said);
   const path = (key: keyof Rules) => ['products', product, key];
+  const missing = (key: keyof Rules, neededBy: keyof Rules, remedy: string): Complaint => {
+    const message = `missing ${pathText(path(key))}, needed by ${neededBy}`;
+    return {
+      code: 'missing-value',
+      message,
+      remedy,
+      path: path(says(neededBy) ? neededBy : key),
+      at: 'value',
+    };
+  };
   const delay = laid.delayDays ?? 0;
   const complaints: Complaint[] = [];
   if (says('delayDays', 'delayReason') && delay > 0 && !laid.delayReason) {
-    complaints.push(missing(path('delayReason'), 'delayDays', 'say why units cannot come back earlier'));
+    complaints.push(missing('delayReason', 'delayDays', 'say why units cannot come back earlier'));
   }
   if (says('costPerReturn', 'currency') && laid.costPerReturn && !laid.currency) {
-    complaints.push(missing(path('currency'), 'costPerReturn', 'add the code of the currency, such as EUR'));
+    complaints.push(missing('currency', 'costPerReturn', 'add the code of the currency, such as EUR'));
   }
   const limit = Math.min((laid.warrantyMonths ?? Infinity) * 31, laid.warrantyDays ?? Infinity);
   if (says('delayDays', 'warrantyDays', 'warrantyMonths') && delay >= limit) {
     complaints.push(invalid(path('delayDays'), delay, 'less than the warranty lasts'));
   }
   return complaints;
-}
-
-function missing(path: readonly string[], neededBy: string, remedy: string): Complaint {
-  const message = `missing ${pathText(path)}, needed by ${neededBy}`;
-  return { code: 'missing-value', message, remedy, path: [...path.slice(0, -1), neededBy], at: 'value' };
 }
