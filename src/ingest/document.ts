@@ -1,6 +1,59 @@
+import { isoDate } from '../calendar.js';
 import type { Config } from '../config.js';
-import type { Intake, IntakeDocument } from '../records.js';
+import type { Intake, IntakeDocument, IntakeProduct, ProductRecords } from '../records.js';
+import { cutoffOf } from './asof.js';
+import { nevadaTable } from './nevada.js';
 
-export function intakeDocument(_config: Config, _intake: Intake): IntakeDocument {
-  throw new Error('being written');
+/** The account and the Nevada-style tables as `intake.json` holds them. */
+export function intakeDocument(config: Config, intake: Intake): IntakeDocument {
+  return {
+    schema: 'returnfall/intake/1',
+    title: config.title,
+    asOf: config.asOf,
+    period: config.period,
+    ageUnit: config.ageUnit,
+    files: intake.files,
+    products: intake.products.map((records) => intakeProduct(config, records)),
+    findings: intake.findings,
+  };
+}
+
+function intakeProduct(config: Config, records: ProductRecords): IntakeProduct {
+  const { product, segment, resolution, cohorts, ages } = records;
+  const aged = (outcome: 'returned' | 'surviving') =>
+    unitsIn(ages.filter((group) => group.outcome === outcome));
+  const units = cohorts.reduce((sum, { shipped }) => sum + shipped, 0) + unitsIn(ages);
+  const returns = unitsIn(records.returned) + aged('returned');
+  const withdrawn = unitsIn(records.withdrawn);
+  return {
+    product,
+    segment,
+    resolution,
+    units,
+    returns,
+    withdrawn,
+    survivors: units - returns - withdrawn,
+    ...shipDates(records),
+    planned: records.planned.map(({ from, to, shipped }) => ({
+      from: isoDate(from),
+      to: isoDate(to - 1),
+      quantity: shipped,
+    })),
+    rejectedReturns: records.rejectedReturns,
+    unusable: records.unusable,
+    table: resolution === 'age' ? null : nevadaTable(records, config.period, cutoffOf(config)),
+    ages,
+  };
+}
+
+function shipDates({ cohorts }: ProductRecords): Pick<IntakeProduct, 'firstShipped' | 'lastShipped'> {
+  const [first, last] = [cohorts[0], cohorts.at(-1)];
+  return {
+    firstShipped: first === undefined ? null : isoDate(first.from),
+    lastShipped: last === undefined ? null : isoDate(last.to - 1),
+  };
+}
+
+function unitsIn(groups: readonly { readonly quantity: number }[]): number {
+  return groups.reduce((sum, { quantity }) => sum + quantity, 0);
 }

@@ -1,0 +1,84 @@
+import type { Config } from '../config.js';
+import { UserError } from '../errors.js';
+import type { Progress, Sources } from '../records.js';
+import { cutoffOf, type DatedQuantity, missingAsOf } from './asof.js';
+import { assemble } from './assemble.js';
+import { type Claim, claimsOf } from './claims.js';
+import { findDuplicates } from './duplicates.js';
+import { newFingerprints } from './fingerprints.js';
+import { addShipment, type Fleet, newFleet, removeShipment } from './fleet.js';
+import { addLeaving, type Departures, markConflict, meetShipment, newDepartures } from './histories.js';
+import { readLeavings } from './leavings.js';
+import { readPlans } from './plan.js';
+import { byteProgress } from './progress.js';
+import type { Reading } from './reading.js';
+import { readShipments } from './shipments.js';
+import { type FileTally, newTally } from './tally.js';
+
+/**
+ * Reads shipments, returns, withdrawals and plan. Returns and withdrawals are held in memory; the shipments stream past
+ * them, and of a unit that did not come back no more is kept than 8 bytes (16 for a moment).
+ * @throws UserError exit 2 without an as-of date, exit 3 for files that cannot be used.
+ */
+export async function readRecords(config: Config, sources: Sources, progress: Progress): Promise<Reading> {
+  const cutoff = cutoffOf(config);
+  const tallies = (role: 'shipments' | 'returns' | 'withdrawals') =>
+    sources[role].map((source) => newTally(source, role));
+  const leavingFiles = [...tallies('returns'), ...tallies('withdrawals')];
+  const departures = newDepartures();
+  for (const tally of leavingFiles) {
+    const bytes = await byteProgress(tally.source, progress);
+    await readLeavings(config, tally, cutoff, (leaving) => addLeaving(departures, leaving), bytes);
+  }
+  const shipmentFiles = tallies('shipments');
+  const fleet = await readFleet(config, shipmentFiles, cutoff, departures, progress);
+  checkUnits(fleet, departures);
+  const claims = claimsOf(departures, fleet);
+  if (config.asOf === null) throw missingAsOf(config.period, datesOf(fleet, claims));
+  const plan = await readPlans(config, sources.plan, cutoff, fleet, progress);
+  const products = assemble(config, { fleet, claims, plans: plan.plans, returnsFiles: leavingFiles }, cutoff);
+  return { products, tallies: [...shipmentFiles, ...leavingFiles, ...plan.tallies], findings: [] };
+}
+
+async function readFleet(
+  config: Config,
+  tallies: readonly FileTally[],
+  cutoff: number,
+  departures: Departures,
+  progress: Progress,
+): Promise<Fleet> {
+  const fleet = newFleet();
+  const fingerprints = newFingerprints();
+  for (const tally of tallies) {
+    const handle: Parameters<typeof readShipments>[3] = (shipment) => {
+      addShipment(fleet, shipment);
+      if (shipment.unit === '') return;
+      fingerprints.add(shipment.unit);
+      meetShipment(departures, shipment);
+    };
+    await readShipments(config, tally, cutoff, handle, await byteProgress(tally.source, progress));
+  }
+  const { removed, conflicting } = await findDuplicates(config, tallies, cutoff, fingerprints.takeRepeated());
+  for (const shipment of removed) removeShipment(fleet, shipment);
+  for (const unit of conflicting) markConflict(departures, unit);
+  return fleet;
+}
+
+/** @throws UserError exit 3 when returns name units alone and no shipment names any. */
+function checkUnits(fleet: Fleet, departures: Departures): void {
+  if (fleet.unitRows > 0) return;
+  for (const { leavings } of departures.units.values()) {
+    const alone = leavings.find((row) => row.product === null || row.shipped === null);
+    if (alone === undefined) continue;
+    const message = 'invalid rows: they name only a unit, and the shipments do not name units';
+    const remedy = 'give shipments by unit, or product and ship_date in these rows';
+    throw new UserError({ code: 'units-not-shipped', file: alone.tally.source.name, message, remedy }, 3);
+  }
+}
+
+function* datesOf(fleet: Fleet, claims: readonly Claim[]): Generator<DatedQuantity> {
+  for (const { lots } of fleet.products.values()) {
+    for (const { shipped, quantity } of lots.values()) yield { range: shipped, quantity };
+  }
+  for (const { when, quantity } of claims) yield { range: when, quantity };
+}

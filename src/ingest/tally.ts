@@ -1,0 +1,88 @@
+import { rowText } from '../csv.js';
+import type { FileAccount, InputRole, RejectCode, RejectRow, SetAsideCode, Source } from '../records.js';
+import type { Columns } from './columns.js';
+
+/** The running account of one file. */
+export interface FileTally {
+  readonly source: Source;
+  readonly role: InputRole;
+  columns: Columns | null;
+  read: number;
+  readonly rejects: RejectRow[];
+  /** Units in rejected rows, by the product that they name. */
+  readonly rejectedUnits: Map<string, number>;
+}
+
+/** A row that may still be refused. */
+export interface RowRef {
+  readonly tally: FileTally;
+  readonly line: number;
+  /** The row as CSV. */
+  readonly text: string;
+  /** The product it names, null when it names none. */
+  readonly product: string | null;
+  /** Units it stands for; negative for a reversal. */
+  readonly quantity: number;
+}
+
+/** Longest cell that is read, in UTF-16 units. */
+export const longestCell = 1000;
+
+export function newTally(source: Source, role: InputRole): FileTally {
+  return { source, role, columns: null, read: 0, rejects: [], rejectedUnits: new Map() };
+}
+
+/** Puts a row among the rejected ones. @param field our name of the column at fault, null when it is the whole row. */
+export function rejectRow(row: RowRef, code: RejectCode, field: string | null, message: string): void {
+  keep(row, 'rejected', code, field, message);
+  if (row.product === null || row.quantity <= 0) return;
+  const { rejectedUnits } = row.tally;
+  rejectedUnits.set(row.product, (rejectedUnits.get(row.product) ?? 0) + row.quantity);
+}
+
+/** Puts a row that is right, but does not count, beside the used ones. */
+export function setAsideRow(row: RowRef, code: SetAsideCode, field: string | null, message: string): void {
+  keep(row, 'set-aside', code, field, message);
+}
+
+/** A row as rejects.csv shows it; cells that are too long are cut. */
+export function shownRow(cells: readonly string[]): string {
+  return rowText(cells.map((cell) => (cell.length > longestCell ? `${cell.slice(0, longestCell)}…` : cell)));
+}
+
+/** The account: every row read is used, rejected or set aside. */
+export async function fileAccount(tally: FileTally): Promise<FileAccount> {
+  const { bytes, sha256 } = await tally.source.digest();
+  const rejected = tally.rejects.filter((row) => row.kind === 'rejected').length;
+  const setAside = tally.rejects.length - rejected;
+  return {
+    file: tally.source.name,
+    role: tally.role,
+    bytes,
+    sha256,
+    read: tally.read,
+    used: tally.read - rejected - setAside,
+    rejected,
+    setAside,
+    codes: countCodes(tally.rejects),
+    unusedColumns: tally.columns?.unused ?? [],
+  };
+}
+
+function keep(
+  { tally, line, text }: RowRef,
+  kind: RejectRow['kind'],
+  code: RejectRow['code'],
+  field: string | null,
+  message: string,
+): void {
+  const at = field === null ? -1 : (tally.columns?.at(field) ?? -1);
+  const column = tally.columns?.header[at] ?? '';
+  tally.rejects.push({ file: tally.source.name, line, kind, code, column, message, row: text });
+}
+
+function countCodes(rejects: readonly RejectRow[]): Record<string, number> {
+  const counts: Record<string, number> = {};
+  for (const code of rejects.map((row) => row.code).sort()) counts[code] = (counts[code] ?? 0) + 1;
+  return counts;
+}
