@@ -22,7 +22,7 @@ export function fileRows(files: readonly FileAccount[]) {
     rejected: countText(file.rejected),
     setAside: countText(file.setAside),
     codes: Object.entries(file.codes)
-      .map(([code, rows]) => `${code} ${countText(rows)}`)
+      .map(([code, rows]) => `${countText(rows)} ${code}`)
       .join(', '),
     unusedColumns: file.unusedColumns.join(', '),
     bytes: countText(file.bytes),
@@ -85,7 +85,7 @@ function plannedText({ planned }: IntakeProduct): string | null {
   const units = planned.reduce((sum, shipment) => sum + shipment.quantity, 0);
   const [first, last] = [planned[0], planned.at(-1)];
   if (first === undefined || last === undefined) return null;
-  return `${countText(units)}, ${dateText(first.from)} to ${dateText(last.to)}`;
+  return `${countText(units)} units, ${dateText(first.from)} to ${dateText(last.to)}`;
 }
 
 function warrantyText(rules: ProductRules, ageUnit: string): string {

@@ -1,5 +1,5 @@
 /** The table of candidate distributions. */
-import type { CandidateFit, CandidateForecast, FitProduct } from '../records.js';
+import type { CandidateFit, CandidateForecast, FitProduct, ParameterInterval } from '../records.js';
 import { criterionText, expectedText, measureText, percentText } from './numbers.js';
 
 /** What tells one candidate from another. */
@@ -51,11 +51,16 @@ function parameterTexts(candidate: CandidateFit, ageUnit: string) {
       name: name === 'atRisk' ? 'share at risk' : name,
       value: measureText(value),
       unit: hasAgeUnit(candidate.family, name) ? `${ageUnit}s` : '',
-      interval:
-        interval === undefined ? null : `${measureText(interval.lower)} to ${measureText(interval.upper)}`,
+      interval: interval === undefined ? null : boundsText(interval),
       level: interval === undefined ? null : percentText(interval.level),
     };
   });
+}
+
+/** An interval that may be open on either side. */
+function boundsText({ lower, upper }: ParameterInterval): string {
+  if (lower === null) return upper === null ? 'not bounded' : `below ${measureText(upper)}`;
+  return upper === null ? `above ${measureText(lower)}` : `${measureText(lower)} to ${measureText(upper)}`;
 }
 
 /** The families whose scale is an age; the others have theirs on the logarithm of age. */

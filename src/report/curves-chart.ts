@@ -8,6 +8,9 @@ import { frame, svgNumber, type Tick } from './axis.js';
 import { candidateName, isChosen } from './candidates.js';
 import { countText, measureText, percentText, tickText } from './numbers.js';
 
+/** Enough to follow a curve by its numbers. */
+const mostCurveRows = 30;
+
 /** View of charts/curves.hbs; null when there is neither a point nor a curve. @param ageUnit null: days, shown in months. */
 export function curvesChart(id: string, fit: FitProduct, ageUnit: string | null) {
   if (fit.curves.length === 0 && fit.nonparametric.length === 0) return null;
@@ -26,7 +29,9 @@ export function curvesChart(id: string, fit: FitProduct, ageUnit: string | null)
     chosen: chosen.map((curve) => ({ name: candidateName(curve), path: curvePath(curve, place) })),
     points: fit.nonparametric.map((point) => pointMark(point, place, unit)),
     unit,
-    table: pointsTable(fit, place),
+    warranty: warrantyMark(fit, place),
+    pointRows: pointRows(fit, place),
+    curveTable: curveTable(fit, place),
     legend: legend(fit, chosen, others),
   };
 }
@@ -80,21 +85,33 @@ function pointMark(point: NonparametricPoint, { x, y, unitLength }: Placing, uni
   };
 }
 
-function pointsTable(fit: FitProduct, { unitLength }: Placing) {
+/** Where warranty ends, when the axis reaches so far; months are drawn at their mean length. */
+function warrantyMark({ warrantyMonths, warrantyDays }: FitProduct, { x, unitLength }: Placing) {
+  const days = Math.min(warrantyDays ?? Infinity, (warrantyMonths ?? Infinity) * daysPerMonth);
+  const at = svgNumber(x(days / unitLength));
+  if (!(at < 100)) return null;
+  return { at, anchor: at < 50 ? 'start' : 'end', offset: at < 50 ? 6 : -6 };
+}
+
+function pointRows(fit: FitProduct, { unitLength }: Placing) {
   return fit.nonparametric.map((point) => ({
     age: measureText(point.age / unitLength),
     probability: percentText(point.probability),
     interval: `${percentText(point.lower)} to ${percentText(point.upper)}`,
     atRisk: countText(point.atRisk),
-    fitted: percentText(chosenAt(fit, point.age)),
   }));
 }
 
-/** The chosen curve where it was evaluated; null between its ages, which this page does not compute. */
-function chosenAt(fit: FitProduct, age: number): number | null {
-  const curve = fit.curves.find((c) => isChosen(fit, c));
-  const i = curve?.ages.indexOf(age) ?? -1;
-  return curve?.probability[i] ?? null;
+/** The curves at no more than `mostCurveRows` of their ages; null when they do not share them. */
+function curveTable({ curves }: FitProduct, { unitLength }: Placing) {
+  const ages = curves[0]?.ages ?? [];
+  if (ages.length === 0 || curves.some((curve) => curve.ages.length !== ages.length)) return null;
+  const step = Math.ceil(ages.length / mostCurveRows);
+  const rows = ages.flatMap((age, i) => {
+    const shares = curves.map((curve) => percentText(curve.probability[i] ?? null));
+    return i % step === 0 || i === ages.length - 1 ? [{ age: measureText(age / unitLength), shares }] : [];
+  });
+  return { names: curves.map(candidateName), rows };
 }
 
 function legend(fit: FitProduct, chosen: readonly Curve[], others: readonly Curve[]) {

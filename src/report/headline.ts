@@ -38,11 +38,7 @@ export function headline(input: HeadlineInput) {
       ...(input.untilWarrantyEnds === null
         ? []
         : [figure(input, input.untilWarrantyEnds, 'Until warranty ends, units shipped so far')]),
-      ...input.costs.map((cost) => ({
-        label: `Expected cost ${over}`,
-        value: moneyText(cost.expectedCost, cost.currency),
-        detail: 'expected returns at the cost per return in force',
-      })),
+      ...costFigure(input, over),
     ],
   };
 }
@@ -86,7 +82,19 @@ function plannedSentence({ periods }: HeadlineInput): readonly string[] {
 }
 
 function figure({ levels }: HeadlineInput, count: PredictedCount, label: string) {
-  return { label, value: expectedText(count.expected), detail: betweenText(count, levels[0] ?? 0) };
+  return {
+    label,
+    values: [expectedText(count.expected)],
+    detail: betweenText(count, levels[0] ?? 0),
+    money: false,
+  };
+}
+
+function costFigure({ costs }: HeadlineInput, over: string) {
+  if (costs.length === 0) return [];
+  const values = costs.map((cost) => moneyText(cost.expectedCost, cost.currency));
+  const detail = 'expected returns at the cost per return in force';
+  return [{ label: `Expected cost ${over}`, values, detail, money: true }];
 }
 
 function returns(count: PredictedCount): string {

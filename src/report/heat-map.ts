@@ -1,5 +1,5 @@
 /** The Nevada-style table as a heat map: numbers in the cells, colour by returns per thousand shipped. */
-import { quantile } from 'd3-array';
+import { max, quantile } from 'd3-array';
 import { scaleLinear, scaleThreshold } from 'd3-scale';
 import type { NevadaTable } from '../records.js';
 import { coarserTable } from './coarser-table.js';
@@ -20,8 +20,10 @@ export function heatMap(full: NevadaTable) {
     withdrawn,
     years: spans(table.periods.map((label) => periodParts(label).year ?? '')),
     columns: table.periods.map((label) => periodParts(label).short),
+    narrow: table.periods.length > 24,
+    wide: isWide(table),
     rows: table.rows.map((row) => ({
-      label: row.shippedIn,
+      label: shortLabel(row.shippedIn),
       shipped: countText(row.shipped),
       returned: countText(sum(row.returned)),
       withdrawn: countText(sum(row.withdrawn)),
@@ -74,6 +76,18 @@ function legend(steps: readonly number[]): Shading['legend'] {
   const last = steps.at(-1);
   const above = last === undefined ? 'above 0' : `${tickText(last)} and above`;
   return [noNumber, ...labels, above].map((label, shade) => ({ shade, label: shade === 0 ? '0' : label }));
+}
+
+/** Whether an upright sheet of paper is too narrow for it. */
+function isWide({ periods, rows }: NevadaTable): boolean {
+  const digits = String(max(rows.flatMap((row) => row.returned)) ?? 0).length;
+  return periods.length * (digits + 1) > 72;
+}
+
+/** `Nov 2026`, `Q4 2026`, `2026`. */
+function shortLabel(label: string): string {
+  const { year, short } = periodParts(label);
+  return year === null ? short : `${short} ${year}`;
 }
 
 /** Runs of equal years with their length. */

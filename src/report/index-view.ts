@@ -54,7 +54,7 @@ function totalView(input: ReportInput, total: ForecastTotal) {
     chart: forecastChart({
       ...shared,
       id: 'forecast-total',
-      title: `Returns per ${words.noun}, all products`,
+      title: `Returns per ${words.per}, all products`,
       periodNoun: words.noun,
       history: total.history,
       asOf,
@@ -65,6 +65,7 @@ function totalView(input: ReportInput, total: ForecastTotal) {
     noun: words.noun,
     included: total.productsIncluded.length,
     left: total.productsMissing.length,
+    all: total.productsIncluded.length + total.productsMissing.length,
   };
 }
 
@@ -90,10 +91,13 @@ function glance(input: ReportInput, products: readonly ProductParts[]) {
       cost: moneyText(costOf(parts), parts.forecast?.currency ?? null),
     };
   });
+  const limited = rows.some((row) => row.until !== null);
   const costed = products.some((parts) => costOf(parts) !== null);
   return {
     rows,
     costed,
+    limited,
+    span: limited ? 3 : 2,
     next: `Next ${words.noun}`,
     horizon: `Next ${horizon} ${words.noun}s`,
     level: percentText(levels[0] ?? null),

@@ -8,9 +8,11 @@ import type { ReportInput } from './parts.js';
 export interface PeriodWords {
   /** `month`, or `step` without a calendar. */
   readonly noun: string;
+  /** What a count is per: `month`, `500 hours of use`. */
+  readonly per: string;
   /** `in November 2026`, `in the rest of October 2026`, `in the next 500 hours of use`. */
   readonly during: (label: string, partial: boolean) => string;
-  /** `November 2026`, `rest of October 2026`, `step 3`. */
+  /** `November 2026`, `rest of October 2026`, `500 to 1,000 hours`. */
   readonly name: (label: string, partial: boolean) => string;
   /** `over the 12 months to 31 October 2027`, from the number of whole periods and the last day. */
   readonly over: (periods: number, lastDay: string | null) => string;
@@ -23,6 +25,7 @@ export function periodWords(input: ReportInput): PeriodWords {
   const name = (label: string, partial: boolean) => `${partial ? 'rest of ' : ''}${periodText(label)}`;
   return {
     noun,
+    per: noun,
     name,
     during: (label, partial) => `in ${partial ? 'the ' : ''}${name(label, partial)}`,
     over: (periods, lastDay) => {
@@ -33,13 +36,15 @@ export function periodWords(input: ReportInput): PeriodWords {
 }
 
 function useWords(settings: Config, ageUnit: string): PeriodWords {
-  const length = (steps: number) =>
-    `the next ${measureText(steps * (settings.ageStep ?? 1))} ${plural(ageUnit)} of use`;
+  const unit = plural(ageUnit);
+  const use = (steps: number) => measureText(steps * (settings.ageStep ?? 1));
+  const name = (label: string) => `${use(Number(label) - 1)} to ${use(Number(label))} ${unit}`;
   return {
     noun: 'step',
-    name: (label) => periodText(label),
-    during: (label) => (label === '1' ? `in ${length(1)}` : `in ${periodText(label)}`),
-    over: (steps) => `over ${length(steps)}`,
+    per: `${use(1)} ${unit} of use`,
+    name,
+    during: (label) => (label === '1' ? `in the next ${use(1)} ${unit} of use` : `from ${name(label)} on`),
+    over: (steps) => `over the next ${use(steps)} ${unit} of use`,
   };
 }
 

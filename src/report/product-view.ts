@@ -27,6 +27,7 @@ export function productSummary(input: ReportInput, parts: ProductParts) {
   };
   return {
     name: parts.name,
+    tableId: `table-${parts.slug}`,
     slug: parts.slug,
     href: `products/${parts.slug}.html`,
     missing: parts.missing,
@@ -35,7 +36,7 @@ export function productSummary(input: ReportInput, parts: ProductParts) {
     chart: forecastChart({
       ...shared,
       id: `forecast-${parts.slug}`,
-      title: `Returns per ${words.noun}`,
+      title: `Returns per ${words.per}`,
       periodNoun: words.noun,
       history: forecast?.history ?? [],
       asOf,
@@ -59,6 +60,7 @@ export function productDetail(input: ReportInput, parts: ProductParts) {
     curves:
       fit === null ? null : curvesChart(`curves-${parts.slug}`, fit, calendar ? null : input.table.ageUnit),
     candidates: fit === null ? [] : candidateRows(fit, forecast?.byCandidate ?? [], input.table.ageUnit),
+    untilWarranty: (forecast?.byCandidate ?? []).some((candidate) => candidate.untilWarrantyEnds !== null),
     horizonWords: horizonWords(input, periodWords(input)),
     findings: distinct([...(fit?.findings ?? []), ...(forecast?.findings ?? []), ...rejectedFinding(parts)]),
     entries: productEntries(table, rulesOf(input.settings, table.product), input.table.ageUnit),

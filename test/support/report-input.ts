@@ -41,7 +41,7 @@ export const fixtureProducts: readonly FixtureProduct[] = [
     scale: 3200,
     cost: 38.5,
     currency: 'EUR',
-    planned: 400,
+    planned: 9000,
   },
   { ...plain, product: 'Brook 60 S', perMonth: 150, shape: 0.7, scale: 9000, cost: 61, currency: 'CHF' },
   { ...plain, product: 'Spring 5', perMonth: 60, months: 8, shape: 1.2, scale: 6000 },
@@ -104,12 +104,29 @@ export function agesInput(): ReportInput {
     { outcome: 'surviving', from: 1500, to: 1500, exact: true, quantity: 140 },
   ] as const;
   const noCalendar = { firstShipped: null, lastShipped: null, resolution: 'age', table: null, ages } as const;
+  const byCandidate = forecast.byCandidate.map((own) => ({ ...own, untilWarrantyEnds: null }));
   const unlimited = { periods, history: [], untilWarrantyEnds: null };
   return {
     ...base,
-    settings: { ...base.settings, asOf: null, ageUnit: 'hour', ageStep: 500, horizon: 6 },
+    settings: {
+      ...base.settings,
+      namedProducts: [],
+      everyProduct: { ...base.settings.everyProduct, warrantyMonths: null },
+      asOf: null,
+      ageUnit: 'hour',
+      ageStep: 500,
+      horizon: 6,
+    },
     table: { ...base.table, asOf: null, ageUnit: 'hour', products: [{ ...product, ...noCalendar }] },
-    fit: base.fit === null ? null : { ...base.fit, asOf: null, ageUnit: 'hour' },
+    fit:
+      base.fit === null
+        ? null
+        : {
+            ...base.fit,
+            asOf: null,
+            ageUnit: 'hour',
+            products: base.fit.products.map((fit) => ({ ...fit, warrantyMonths: null })),
+          },
     forecast:
       base.forecast === null
         ? null
@@ -117,7 +134,7 @@ export function agesInput(): ReportInput {
             ...base.forecast,
             asOf: null,
             horizon: 6,
-            products: [{ ...forecast, ...unlimited }],
+            products: [{ ...forecast, ...unlimited, byCandidate }],
             total: { ...base.forecast.total, ...unlimited },
           },
   };
@@ -167,10 +184,11 @@ function nevadaTable(product: FixtureProduct): NevadaTable {
 function tableRow(product: FixtureProduct, starts: readonly number[], i: number): TableRow {
   const from = starts[i] as number;
   const shipped = Math.round(product.perMonth * wobble(i));
-  const returned = starts.map((start, j) => {
-    const share = shareReturned(product, start + 15 - from) - shareReturned(product, start - 15 - from);
-    return j < i ? 0 : Math.round(shipped * share * wobble(i + 7 * j));
-  });
+  const upTo = (j: number) => {
+    const share = shareReturned(product, (starts[j] as number) + 15 - from);
+    return j < i ? 0 : Math.round(shipped * share * (1 + 0.03 * Math.sin(3 * j + i)));
+  };
+  const returned = starts.map((_, j) => (j === 0 ? upTo(0) : Math.max(0, upTo(j) - upTo(j - 1))));
   const withdrawn = starts.map((_, j) => (j === i + 2 && i % 5 === 0 && product.perMonth > 100 ? 1 : 0));
   const survivors = shipped - [...returned, ...withdrawn].reduce((a, b) => a + b, 0);
   return {
