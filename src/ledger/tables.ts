@@ -1,10 +1,11 @@
-import { parsePeriod } from '../calendar.js';
+import { type DayRange, parsePeriod } from '../calendar.js';
 import { csvLine } from '../csv.js';
 import type { IntakeDocument, TableRow } from '../records.js';
 
 /**
  * `table.csv`: the Nevada-style table of every product that has a calendar, `product,shipped_in,shipped,<period>…`,
- * one row a ship period, a column for each return period of any product. It reads back as `--table`.
+ * one row a ship period, a column for each return period of any product, empty where it ends before the shipment. It
+ * reads back as `--table`.
  */
 export function tableCsv(document: IntakeDocument): string {
   return nevadaCsv(document, ({ returned }) => returned);
@@ -18,21 +19,27 @@ export function tableWithdrawnCsv(document: IntakeDocument): string | null {
 
 function nevadaCsv(document: IntakeDocument, cells: (row: TableRow) => readonly number[]): string {
   const periods = allPeriods(document);
-  const lines = [csvLine(['product', 'shipped_in', 'shipped', ...periods])];
+  const lines = [csvLine(['product', 'shipped_in', 'shipped', ...periods.map(({ label }) => label)])];
   for (const { product, table } of document.products) {
     if (table === null) continue;
-    const columns = periods.map((period) => table.periods.indexOf(period));
+    const column = new Map(table.periods.map((period, i) => [period, i]));
     for (const row of table.rows) {
-      const quantities = columns.map((column) => cells(row)[column] ?? 0);
+      const quantities = periods.map(({ label, to }) =>
+        to <= row.from ? null : (cells(row)[column.get(label) ?? -1] ?? 0),
+      );
       lines.push(csvLine([product, row.shippedIn, row.shipped, ...quantities]));
     }
   }
   return lines.join('');
 }
 
-/** Labels of the return periods of all products, in the order of the calendar. */
-function allPeriods(document: IntakeDocument): readonly string[] {
+/** The return periods of all products, in the order of the calendar. */
+function allPeriods(document: IntakeDocument): readonly (DayRange & { readonly label: string })[] {
   const labels = new Set(document.products.flatMap(({ table }) => table?.periods ?? []));
-  const firstDay = (label: string) => parsePeriod(label)?.from ?? Infinity;
-  return [...labels].sort((a, b) => firstDay(a) - firstDay(b));
+  return [...labels]
+    .flatMap((label) => {
+      const days = parsePeriod(label);
+      return days === null ? [] : [{ label, ...days }];
+    })
+    .sort((a, b) => a.from - b.from);
 }

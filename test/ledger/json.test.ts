@@ -1,0 +1,44 @@
+import fc from 'fast-check';
+import { expect, test } from 'vitest';
+import { jsonText } from '../../src/ledger/json.js';
+import { quantileKey } from '../../src/quantiles.js';
+
+test('a document has its keys as built, lists of numbers on one line, and null for what is not finite', () => {
+  const document = {
+    b: 1.5,
+    a: [1, Number.NaN, -Infinity, 0.1],
+    none: undefined,
+    list: [{ x: [] }, 'é\n'],
+    o: {},
+  };
+  expect(jsonText(document)).toBe(
+    '{\n  "b": 1.5,\n  "a": [1, null, null, 0.1],\n  "list": [\n    {\n      "x": []\n    },\n    "é\\n"\n  ],\n  "o": {}\n}\n',
+  );
+});
+
+test('any JSON value reads back as the same value', () => {
+  fc.assert(
+    fc.property(fc.jsonValue(), (value) => {
+      expect(JSON.parse(jsonText(value))).toEqual(JSON.parse(JSON.stringify(value)));
+    }),
+  );
+});
+
+test('doubles are written in full', () => {
+  fc.assert(
+    fc.property(fc.double({ noNaN: true, noDefaultInfinity: true }), (x) => {
+      expect(JSON.parse(jsonText([x]))[0]).toBe(x === 0 ? 0 : x);
+    }),
+  );
+});
+
+test('keys of quantiles are rounded to six decimals without trailing zeros', () => {
+  expect([(1 - 0.8) / 2, 0.5, (1 + 0.95) / 2, 0.1 + 0.2, 0.0000049, 0.999999].map(quantileKey)).toEqual([
+    '0.1',
+    '0.5',
+    '0.975',
+    '0.3',
+    '0.000005',
+    '0.999999',
+  ]);
+});
