@@ -48,7 +48,7 @@ export function checkKeys<K extends Keys>(
 
 /** `invalid NAME VALUE, allowed …` */
 export function invalid(path: Path, value: unknown, allowed: string, remedy?: string): Complaint {
-  const message = `invalid ${pathText(path) || 'settings'} ${valueText(value)}, allowed ${allowed}`;
+  const message = `invalid ${path.length === 0 ? 'settings' : pathText(path)} ${valueText(value)}, allowed ${allowed}`;
   return { code: 'invalid-value', message, path, at: 'value', ...(remedy === undefined ? {} : { remedy }) };
 }
 
