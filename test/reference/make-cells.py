@@ -12,56 +12,14 @@ import json
 import sys
 
 import mpmath
-from mpmath import erfc, exp, expm1, gamma, gammainc, log, mp, mpf, sqrt
+from mpmath import log, mp, mpf
+
+sys.dont_write_bytecode = True
+from distributions import DISTRIBUTIONS
 
 CLOSED_DIGITS = 500
 QUADRATURE_DIGITS = 45
 
-
-def exponential(scale):
-    return weibull(1, scale)
-
-
-def weibull(shape, scale):
-    k, s = mpf(shape), mpf(scale)
-    survival = lambda t: exp(-((t / s) ** k))
-    cdf = lambda t: -expm1(-((t / s) ** k))
-    partial = lambda t: s * gammainc(1 + 1 / k, 0, (t / s) ** k)
-    return cdf, survival, partial
-
-
-def lognormal(location, scale):
-    m, s = mpf(location), mpf(scale)
-    phi = lambda z: erfc(-z / sqrt(2)) / 2
-    cdf = lambda t: phi((log(t) - m) / s)
-    survival = lambda t: phi(-(log(t) - m) / s)
-    partial = lambda t: exp(m + s * s / 2) * phi((log(t) - m) / s - s)
-    return cdf, survival, partial
-
-
-def loglogistic(location, scale):
-    m, s = mpf(location), mpf(scale)
-    cdf = lambda t: 1 / (1 + exp(-(log(t) - m) / s))
-    survival = lambda t: 1 / (1 + exp((log(t) - m) / s))
-    partial = lambda t: exp(m) * mpmath.betainc(1 + s, 1 - s, 0, cdf(t))
-    return cdf, survival, partial
-
-
-def gamma_family(shape, scale):
-    k, s = mpf(shape), mpf(scale)
-    cdf = lambda t: gammainc(k, 0, t / s, regularized=True)
-    survival = lambda t: gammainc(k, t / s, regularized=True)
-    partial = lambda t: s * gammainc(k + 1, 0, t / s) / gamma(k)
-    return cdf, survival, partial
-
-
-FAMILIES = {
-    "exponential": exponential,
-    "weibull": weibull,
-    "lognormal": lognormal,
-    "loglogistic": loglogistic,
-    "gamma": gamma_family,
-}
 
 # name, family, parameters, cohort, cut-off, cells, delay, warranty (both ages in days)
 CASES = [
@@ -101,7 +59,8 @@ CASES = [
 
 
 def antiderivative(case):
-    cdf, _, partial = FAMILIES[case["family"]](**case["parameters"])
+    distribution = DISTRIBUTIONS[case["family"]](**case["parameters"])
+    cdf, partial = distribution["cdf"], distribution["partial_mean"]
     delay, warranty = case["delay"], case["warranty"]
 
     def whole(t):
@@ -127,7 +86,8 @@ def closed(case):
 
 def quadrature(case):
     mp.dps = QUADRATURE_DIGITS
-    cdf, survival, _ = FAMILIES[case["family"]](**case["parameters"])
+    distribution = DISTRIBUTIONS[case["family"]](**case["parameters"])
+    cdf, survival = distribution["cdf"], distribution["survival"]
     delay, warranty = case["delay"], case["warranty"]
     s0, s1 = case["cohort"]
     inner = lambda t: (t if warranty is None else min(t, mpf(warranty))) - delay
