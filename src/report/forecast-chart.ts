@@ -30,7 +30,8 @@ export interface ForecastChartInput {
   readonly periodText: (label: string, partial: boolean) => string;
 }
 
-interface Bar {
+/** A bar of the chart, in its slot. */
+export interface Bar {
   readonly x: number;
   readonly y: number;
   readonly width: number;
