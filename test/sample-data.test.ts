@@ -4,6 +4,9 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { nodeEffects } from '../src/cli/effects.js';
+import { monthEnd } from '../src/pipeline.js';
+import { readSettings, resolveConfig } from '../src/settings.js';
 
 const folder = fileURLToPath(new URL('../sample-data/', import.meta.url));
 const readme = readFileSync(join(folder, 'README.md'), 'utf8');
@@ -56,6 +59,24 @@ describe('the sample data', () => {
         what,
       ).toBe(true);
     }
+  });
+
+  it('are read with exactly the planted faults, and every other row is used', async () => {
+    const settings = readFileSync(join(folder, 'returnfall.json'), 'utf8');
+    const effects = nodeEffects({ base: folder });
+    const config = resolveConfig(readSettings(settings, 'returnfall.json'), {});
+    const { intake } = await monthEnd(config, 'table', effects);
+    effects.close();
+    const planted = tableRows(/^`.*\.csv`$/).flatMap(([file = '', lines = '', , code = '']) =>
+      lines.split(', ').map((line) => `${file.slice(1, -1)}:${line} ${code.slice(1, -1)}`),
+    );
+    const found = intake.rejects.map(({ file, line, code }) => `${file}:${line} ${code}`);
+    expect(found.sort()).toEqual(planted.sort());
+    const rows = files.map(
+      (name) => readFileSync(join(folder, name), 'utf8').trimEnd().split('\n').length - 1,
+    );
+    const read = intake.files.map((file) => file.read);
+    expect(read.reduce((sum, n) => sum + n, 0)).toBe(rows.reduce((sum, n) => sum + n, 0));
   });
 
   it('stay small', () => {
