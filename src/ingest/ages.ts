@@ -38,7 +38,7 @@ export async function readAges(
       tally.source,
       config.ages.encoding,
       begin,
-      await byteProgress(tally.source, progress),
+      await byteProgress(tally, progress),
     );
   }
   const names = [...products.keys()].sort(compareText);

@@ -1,7 +1,7 @@
 import type { Config } from '../config.js';
 import { compareText } from '../csv.js';
 import type { Cohort, ProductRecords } from '../records.js';
-import type { Claim } from './claims.js';
+import type { ProductClaims } from './claims.js';
 import type { Fleet, ShippedProduct } from './fleet.js';
 import { productRecords } from './product.js';
 import type { FileTally } from './tally.js';
@@ -9,7 +9,7 @@ import type { FileTally } from './tally.js';
 /** What all files together say. */
 export interface Parts {
   readonly fleet: Fleet;
-  readonly claims: readonly Claim[];
+  readonly claims: ReadonlyMap<string, ProductClaims>;
   readonly plans: ReadonlyMap<string, readonly Cohort[]>;
   /** Files whose rejected rows may name returned units; those of other roles are passed over. */
   readonly returnsFiles: readonly FileTally[];
@@ -17,18 +17,14 @@ export interface Parts {
 
 /** Puts the products together, sorted by name. */
 export function assemble(config: Config, parts: Parts, cutoff: number): ProductRecords[] {
-  const { fleet, plans } = parts;
-  const claims = new Map<string, Claim[]>();
-  for (const claim of parts.claims) {
-    if (!claims.get(claim.product)?.push(claim)) claims.set(claim.product, [claim]);
-  }
+  const { fleet, plans, claims } = parts;
   const built = [...fleet.products.keys()].sort(compareText).map((product) =>
     productRecords(
       config,
       {
         product,
         shipped: fleet.products.get(product) as ShippedProduct,
-        claims: claims.get(product) ?? [],
+        claims: claims.get(product) ?? { units: [], counted: [] },
         planned: plans.get(product) ?? [],
       },
       cutoff,

@@ -1,88 +1,73 @@
-import { compareText } from '../csv.js';
+import { type Claim, compareLeaving, originOf } from './claim.js';
 import type { Dated } from './dated.js';
-import type { Fleet } from './fleet.js';
-import type { Departures, UnitHistory } from './histories.js';
+import type { Departures } from './departures.js';
+import type { Fleet, ShippedLot } from './fleet.js';
 import { isInOrder, type Leaving } from './leavings.js';
 import { netReversals } from './reversals.js';
 import { rejectRow, setAsideRow } from './tally.js';
 
-/** Units that are said to have left a cohort; its rows are used or rejected together. */
-export interface Claim {
-  readonly kind: Leaving['kind'];
-  readonly product: string;
-  readonly shipped: Dated;
-  readonly when: Dated;
-  /** Above 0. */
-  readonly quantity: number;
-  /** In no order. */
-  readonly rows: readonly Leaving[];
+/** What is claimed of one product. */
+export interface ProductClaims {
+  /** Rows that name a unit, one a unit. */
+  readonly units: Leaving[];
+  /** Rows that count units, netted. */
+  readonly counted: Claim[];
 }
 
-/** Turns returns and withdrawals into claims on cohorts; what cannot be one goes into the tallies of its rows. */
-export function claimsOf(departures: Departures, fleet: Fleet): Claim[] {
-  const claims: Claim[] = [];
-  for (const history of departures.units.values()) {
-    const claim = unitClaim(history, fleet);
-    if (claim !== null) claims.push(claim);
+/** Sorts returns and withdrawals by product; what cannot be a claim goes into the tallies of its rows. */
+export function claimsByProduct(departures: Departures, fleet: Fleet): Map<string, ProductClaims> {
+  const products = new Map<string, ProductClaims>();
+  const claimsOf = (product: string) => {
+    const claims = products.get(product) ?? { units: [], counted: [] };
+    products.set(product, claims);
+    return claims;
+  };
+  for (const [unit, rows] of departures.units) {
+    const first = earliest(rows, fleet, departures.conflicting.has(unit));
+    if (first !== null) claimsOf(originOf(first).product).units.push(first);
   }
   const known = departures.counted.filter((leaving) => isKnownProduct(leaving, fleet));
-  return [...claims, ...netReversals(known)];
+  for (const claim of netReversals(known)) claimsOf(claim.product).counted.push(claim);
+  return products;
 }
 
-/** Orders what left: earlier first, a return before a withdrawal of the same time, then by what the row says. */
-export function compareLeaving(
-  a: Pick<Claim, 'when' | 'kind'> & { readonly text: string },
-  b: Pick<Claim, 'when' | 'kind'> & { readonly text: string },
-): number {
-  return (
-    a.when.from - b.when.from ||
-    a.when.to - b.when.to ||
-    compareText(a.kind, b.kind) ||
-    compareText(a.text, b.text)
-  );
-}
-
-function unitClaim(history: UnitHistory, fleet: Fleet): Claim | null {
-  const fitting = history.leavings.flatMap((leaving) => matched(leaving, history, fleet) ?? []);
-  if (fitting.length > 1) fitting.sort((a, b) => compareLeaving(a.leaving, b.leaving));
+/** Of the rows of one unit the earliest that fits its shipment; the later ones are set aside. */
+function earliest(rows: Leaving, fleet: Fleet, conflicting: boolean): Leaving | null {
+  const fitting: Leaving[] = [];
+  for (let row: Leaving | null = rows; row !== null; row = row.next) {
+    if (row.lot === null ? fitsCounted(row, conflicting, fleet) : fitsShipment(row, row.lot))
+      fitting.push(row);
+  }
+  if (fitting.length > 1) fitting.sort(compareLeaving);
   const [first, ...later] = fitting;
   if (first === undefined) return null;
-  for (const { leaving } of later) setAsideRow(leaving, 'repeat-return', 'unit', leftBefore(first.leaving));
-  const { kind, when } = first.leaving;
-  return { kind, when, product: first.product, shipped: first.shipped, quantity: 1, rows: [first.leaving] };
+  for (const row of later) setAsideRow(row, 'repeat-return', 'unit', `the unit was ${first.kind} before`);
+  return first;
 }
 
-interface Matched {
-  readonly leaving: Leaving;
-  readonly product: string;
-  readonly shipped: Dated;
-}
-
-/** The row with the origin of its unit; null when there is none or they do not fit, and then the row is rejected. */
-function matched(leaving: Leaving, history: UnitHistory, fleet: Fleet): Matched | null {
-  const { product, shipped } = history;
-  if (product === null || shipped === null) return matchedByOrigin(leaving, history.conflicting, fleet);
+/** True when a row agrees with the shipment of its unit; otherwise it is rejected. */
+function fitsShipment(leaving: Leaving, { product, shipped }: ShippedLot): boolean {
   if (leaving.product !== null && leaving.product !== product) {
     const message = `unit ${leaving.unit} was shipped as ${product}, not as ${leaving.product}`;
     rejectRow(leaving, 'unknown-unit', 'product', message);
-    return null;
+    return false;
   }
   if (leaving.shipped !== null && !overlap(leaving.shipped, shipped)) {
     rejectRow(leaving, 'unknown-unit', 'ship_date', `unit ${leaving.unit} was shipped at another time`);
-    return null;
+    return false;
   }
-  return isInOrder({ ...leaving, product }, shipped) ? { leaving, product, shipped } : null;
+  return isInOrder(leaving, product, shipped);
 }
 
-/** A unit that no shipment names can still be one of a counted lot, when its row says which. */
-function matchedByOrigin(leaving: Leaving, conflicting: boolean, fleet: Fleet): Matched | null {
+/** A unit that no shipment names can still be one of a counted lot, when its row says which; otherwise the row is rejected. */
+function fitsCounted(leaving: Leaving, conflicting: boolean, fleet: Fleet): boolean {
   const { product, shipped, unit } = leaving;
-  if (product !== null && !isKnownProduct(leaving, fleet)) return null;
+  if (product !== null && !isKnownProduct(leaving, fleet)) return false;
   const counted = product !== null && fleet.products.get(product)?.counted === true;
-  if (counted && shipped !== null && !conflicting) return { leaving, product, shipped };
+  if (counted && shipped !== null && !conflicting) return true;
   const why = conflicting ? 'has several shipments that contradict each other' : 'was never shipped';
   rejectRow(leaving, 'unknown-unit', 'unit', `unit ${unit} ${why}`);
-  return null;
+  return false;
 }
 
 function isKnownProduct(leaving: Leaving, fleet: Fleet): boolean {
@@ -93,8 +78,4 @@ function isKnownProduct(leaving: Leaving, fleet: Fleet): boolean {
 
 function overlap(a: Dated, b: Dated): boolean {
   return a.from < b.to && b.from < a.to;
-}
-
-function leftBefore(first: Leaving): string {
-  return first.kind === 'returned' ? 'the unit was returned before' : 'the unit was withdrawn before';
 }

@@ -1,33 +1,35 @@
 /**
- * Serial numbers of which only a fingerprint is kept: 8 bytes a unit while reading and 16 while looking for equals. Two
- * serials may share a fingerprint (among five million about once in a thousand runs), so equals are only suspects.
+ * Fingerprints of serial numbers, 8 bytes each, spread over buckets so that looking for equals needs little more. Two serials
+ * may share a fingerprint (among five million about once in a thousand runs), so equals are only suspects.
  */
 export interface Fingerprints {
-  readonly add: (serial: string) => void;
+  readonly add: (print: number) => void;
   /** Fingerprints that came more than once. The store is empty afterwards. */
   readonly takeRepeated: () => ReadonlySet<number>;
 }
 
-const chunkLength = 1 << 16;
+const bucketCount = 256;
+const chunkLength = 1024;
+
+interface Bucket {
+  readonly chunks: Float64Array[];
+  count: number;
+}
 
 export function newFingerprints(): Fingerprints {
-  let chunks: Float64Array[] = [];
-  let count = 0;
+  const buckets = Array.from({ length: bucketCount }, (): Bucket => ({ chunks: [], count: 0 }));
   return {
-    add(serial) {
-      const place = count % chunkLength;
-      if (place === 0) chunks.push(new Float64Array(chunkLength));
-      (chunks[chunks.length - 1] as Float64Array)[place] = fingerprint(serial);
-      count++;
+    add(print) {
+      const bucket = buckets[print & (bucketCount - 1)] as Bucket;
+      const place = bucket.count % chunkLength;
+      if (place === 0) bucket.chunks.push(new Float64Array(chunkLength));
+      (bucket.chunks[bucket.chunks.length - 1] as Float64Array)[place] = print;
+      bucket.count++;
     },
     takeRepeated() {
-      const all = new Float64Array(count);
-      chunks.forEach((chunk, i) => {
-        all.set(chunk.subarray(0, Math.min(chunkLength, count - i * chunkLength)), i * chunkLength);
-      });
-      chunks = [];
-      count = 0;
-      return repeated(all.sort());
+      const found = new Set<number>();
+      for (const bucket of buckets) findRepeated(bucket, found);
+      return found;
     },
   };
 }
@@ -55,10 +57,17 @@ function mixed(hash: number): number {
   return (h ^ (h >>> 16)) >>> 0;
 }
 
-function repeated(sorted: Float64Array): Set<number> {
-  const found = new Set<number>();
+/** Adds what a bucket holds more than once to `found`, and empties it. */
+function findRepeated(bucket: Bucket, found: Set<number>): void {
+  const sorted = new Float64Array(bucket.count);
+  bucket.chunks.forEach((chunk, i) => {
+    const start = i * chunkLength;
+    sorted.set(chunk.subarray(0, bucket.count - start), start);
+  });
+  bucket.chunks.length = 0;
+  bucket.count = 0;
+  sorted.sort();
   for (let i = 1; i < sorted.length; i++) {
     if (sorted[i] === sorted[i - 1]) found.add(sorted[i] as number);
   }
-  return found;
 }

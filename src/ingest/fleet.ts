@@ -3,6 +3,7 @@ import type { ShipmentRow } from './shipments.js';
 
 /** Units shipped on one date as the records give it. */
 export interface ShippedLot {
+  readonly product: string;
   readonly shipped: Dated;
   quantity: number;
 }
@@ -26,17 +27,22 @@ export function newFleet(): Fleet {
   return { products: new Map(), unitRows: 0 };
 }
 
-export function addShipment(fleet: Fleet, { product, unit, shipped, quantity }: ShipmentRow): void {
+/** Adds a shipment and returns the lot that holds it. */
+export function addShipment(fleet: Fleet, { product, unit, shipped, quantity }: ShipmentRow): ShippedLot {
   let entry = fleet.products.get(product);
   if (entry === undefined) {
     entry = { lots: new Map(), counted: false };
     fleet.products.set(product, entry);
   }
-  const lot = entry.lots.get(shipped.key);
-  if (lot === undefined) entry.lots.set(shipped.key, { shipped, quantity });
-  else lot.quantity += quantity;
+  let lot = entry.lots.get(shipped.key);
+  if (lot === undefined) {
+    lot = { product, shipped, quantity: 0 };
+    entry.lots.set(shipped.key, lot);
+  }
+  lot.quantity += quantity;
   if (unit === '') entry.counted = true;
   else fleet.unitRows++;
+  return lot;
 }
 
 /** Takes a shipment that was added out again; a product of which nothing is left was never shipped. */

@@ -6,15 +6,15 @@ import {
   missingValue,
   productAt,
   type Row,
-  refOf,
   textAt,
   wholeNumber,
 } from './cells.js';
-import { findColumns } from './columns.js';
+import { type Columns, findColumns } from './columns.js';
 import type { Dated } from './dated.js';
 import { type DateReader, dateReader } from './dates.js';
+import type { ShippedLot } from './fleet.js';
 import { readRows } from './rows.js';
-import { type FileTally, type RowRef, rejectRow, setAsideRow } from './tally.js';
+import { type FileTally, type RowRef, rejectRow, setAsideRow, shownRow } from './tally.js';
 
 /** A row of a returns or withdrawals file that could be read: units that left the fleet. */
 export interface Leaving extends RowRef {
@@ -25,6 +25,10 @@ export interface Leaving extends RowRef {
   readonly shipped: Dated | null;
   /** When they left. */
   readonly when: Dated;
+  /** The shipment of the unit, null until it is met. */
+  lot: ShippedLot | null;
+  /** Another row of the same unit. */
+  next: Leaving | null;
 }
 
 /**
@@ -47,8 +51,9 @@ export async function readLeavings(
     input.encoding,
     (header) => {
       tally.columns = findColumns(tally.role, tally.source.name, header, input);
+      const at = positionsOf(tally.columns, kind);
       return (cells, line) => {
-        const leaving = readLeaving(tally, { cells, line }, kind, readDate);
+        const leaving = readLeaving(tally, { cells, line }, at, readDate);
         if (leaving === null) return;
         if (leaving.when.from < cutoff) handle(leaving);
         else setAsideRow(leaving, 'after-as-of', dateField(kind), `${kind} after the as-of date`);
@@ -58,28 +63,53 @@ export async function readLeavings(
   );
 }
 
-function readLeaving(
-  tally: FileTally,
-  row: Row,
-  kind: Leaving['kind'],
-  readDate: DateReader,
-): Leaving | null {
+interface Positions {
+  readonly kind: Leaving['kind'];
+  readonly unit: number;
+  readonly product: number;
+  readonly shipped: number;
+  readonly when: number;
+  readonly quantity: number;
+}
+
+function positionsOf(columns: Columns, kind: Leaving['kind']): Positions {
+  return {
+    kind,
+    unit: columns.at('unit'),
+    product: columns.at('product'),
+    shipped: columns.at('ship_date'),
+    when: columns.at(dateField(kind)),
+    quantity: columns.at('quantity'),
+  };
+}
+
+function readLeaving(tally: FileTally, row: Row, at: Positions, readDate: DateReader): Leaving | null {
   if (!isWellFormed(tally, row)) return null;
-  const at = (field: string) => tally.columns?.at(field) ?? -1;
-  const unit = textAt(row, at('unit'));
-  const product = productAt(tally, row, at('product'));
-  if (unit === '' && (at('product') < 0 || at('ship_date') < 0)) return missingValue(tally, row, 'unit');
+  const unit = textAt(row, at.unit);
+  const product = productAt(tally, row, at.product);
+  if (unit === '' && (at.product < 0 || at.shipped < 0)) return missingValue(tally, row, 'unit');
   if (unit === '' && product === '') return missingValue(tally, row, 'product');
-  const shipText = textAt(row, at('ship_date'));
-  const needsOrigin = unit === '' || shipText !== '';
-  const shipped = needsOrigin ? dateOf(tally, row, 'ship_date', at('ship_date'), readDate) : null;
+  const needsOrigin = unit === '' || textAt(row, at.shipped) !== '';
+  const shipped = needsOrigin ? dateOf(tally, row, 'ship_date', at.shipped, readDate) : null;
   if (needsOrigin && shipped === null) return null;
-  const when = dateOf(tally, row, dateField(kind), at(dateField(kind)), readDate);
+  const when = dateOf(tally, row, dateField(at.kind), at.when, readDate);
   if (when === null) return null;
-  const quantity = quantityOf(tally, row, unit, at('quantity'));
+  const quantity = quantityOf(tally, row, unit, at.quantity);
   if (quantity === null) return null;
-  const leaving = { ...refOf(tally, row), kind, unit: unit === '' ? null : unit, shipped, when, quantity };
-  return shipped === null || isInOrder(leaving, shipped) ? leaving : null;
+  const leaving: Leaving = {
+    tally,
+    line: row.line,
+    text: shownRow(row.cells),
+    product: product === '' ? null : product,
+    quantity,
+    kind: at.kind,
+    unit: unit === '' ? null : unit,
+    shipped,
+    when,
+    lot: null,
+    next: null,
+  };
+  return shipped === null || isInOrder(leaving, leaving.product, shipped) ? leaving : null;
 }
 
 function quantityOf(tally: FileTally, row: Row, unit: string, at: number): number | null {
@@ -93,11 +123,14 @@ function quantityOf(tally: FileTally, row: Row, unit: string, at: number): numbe
   return badQuantity(tally, row, 'quantity', text, 'it must be a whole number other than 0');
 }
 
-/** True unless the whole of the given time lies before the shipment; then the row is rejected. */
-export function isInOrder(leaving: Leaving, shipped: Dated): boolean {
+/**
+ * True unless the whole of the time that a row gives lies before the shipment; then the row is rejected.
+ * @param product the product of the units, null when it is not known.
+ */
+export function isInOrder(leaving: Leaving, product: string | null, shipped: Dated): boolean {
   if (leaving.when.to > shipped.from) return true;
   const message = `${leaving.kind} before the shipment`;
-  rejectRow(leaving, 'return-before-shipment', dateField(leaving.kind), message);
+  rejectRow({ ...leaving, product }, 'return-before-shipment', dateField(leaving.kind), message);
   return false;
 }
 

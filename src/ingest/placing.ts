@@ -3,7 +3,7 @@ import { type ProductRules, warrantyLimit } from '../config.js';
 import type { Cell, Cohort } from '../records.js';
 import { type OutOfBounds, outOfBounds, outOfBoundsText } from './bounds.js';
 import { newCells } from './cellmap.js';
-import { type Claim, compareLeaving } from './claims.js';
+import { type Claim, compareLeaving } from './claim.js';
 import type { Cohorts } from './cohorts.js';
 import { dateField } from './leavings.js';
 import { rejectRow, setAsideRow } from './tally.js';

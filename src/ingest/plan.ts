@@ -52,7 +52,7 @@ export async function readPlans(
       tally.source,
       config.plan.encoding,
       begin,
-      await byteProgress(tally.source, progress),
+      await byteProgress(tally, progress),
     );
   }
   return { plans: new Map([...plans].map(([product, cohorts]) => [product, merged(cohorts)])), tallies };

@@ -1,7 +1,8 @@
 import type { DayRange } from '../calendar.js';
 import { type Config, rulesOf } from '../config.js';
 import type { Cohort, NotForecast, ProductRecords } from '../records.js';
-import type { Claim } from './claims.js';
+import { unitClaim } from './claim.js';
+import type { ProductClaims } from './claims.js';
 import { cohortsOf } from './cohorts.js';
 import type { ShippedProduct } from './fleet.js';
 import { type Placed, placeClaims } from './placing.js';
@@ -10,7 +11,7 @@ import { type Placed, placeClaims } from './placing.js';
 export interface ProductParts {
   readonly product: string;
   readonly shipped: ShippedProduct;
-  readonly claims: readonly Claim[];
+  readonly claims: ProductClaims;
   readonly planned: readonly Cohort[];
 }
 
@@ -20,7 +21,8 @@ export function productRecords(
   parts: ProductParts,
   cutoff: number,
 ): Omit<ProductRecords, 'rejectedReturns'> {
-  const { product, claims, planned } = parts;
+  const { product, planned } = parts;
+  const claims = [...parts.claims.units.map(unitClaim), ...parts.claims.counted];
   const shipDates = claims.map((claim) => claim.shipped);
   const cohorts = cohortsOf(product, parts.shipped, shipDates, cutoff);
   const placed = placeClaims(claims, cohorts, rulesOf(config, product), cutoff);

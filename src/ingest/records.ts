@@ -3,12 +3,12 @@ import { UserError } from '../errors.js';
 import type { Progress, Sources } from '../records.js';
 import { cutoffOf, type DatedQuantity, missingAsOf } from './asof.js';
 import { assemble } from './assemble.js';
-import { type Claim, claimsOf } from './claims.js';
+import { claimsByProduct } from './claims.js';
+import { addLeaving, type Departures, markConflict, meetShipment, newDepartures } from './departures.js';
 import { findDuplicates } from './duplicates.js';
-import { newFingerprints } from './fingerprints.js';
+import { fingerprint, newFingerprints } from './fingerprints.js';
 import { addShipment, type Fleet, newFleet, removeShipment } from './fleet.js';
-import { addLeaving, type Departures, markConflict, meetShipment, newDepartures } from './histories.js';
-import { readLeavings } from './leavings.js';
+import { type Leaving, readLeavings } from './leavings.js';
 import { readPlans } from './plan.js';
 import { byteProgress } from './progress.js';
 import type { Reading } from './reading.js';
@@ -27,14 +27,14 @@ export async function readRecords(config: Config, sources: Sources, progress: Pr
   const leavingFiles = [...tallies('returns'), ...tallies('withdrawals')];
   const departures = newDepartures();
   for (const tally of leavingFiles) {
-    const bytes = await byteProgress(tally.source, progress);
-    await readLeavings(config, tally, cutoff, (leaving) => addLeaving(departures, leaving), bytes);
+    const bytes = await byteProgress(tally, progress);
+    await readLeavings(config, tally, cutoff, (row) => keepLeaving(departures, row), bytes);
   }
   const shipmentFiles = tallies('shipments');
   const fleet = await readFleet(config, shipmentFiles, cutoff, departures, progress);
   checkUnits(fleet, departures);
-  const claims = claimsOf(departures, fleet);
-  if (config.asOf === null) throw missingAsOf(config.period, datesOf(fleet, claims));
+  if (config.asOf === null) throw missingAsOf(config.period, datesOf(fleet, departures));
+  const claims = claimsByProduct(departures, fleet);
   const plan = await readPlans(config, sources.plan, cutoff, fleet, progress);
   const products = assemble(config, { fleet, claims, plans: plan.plans, returnsFiles: leavingFiles }, cutoff);
   return { products, tallies: [...shipmentFiles, ...leavingFiles, ...plan.tallies], findings: [] };
@@ -51,12 +51,13 @@ async function readFleet(
   const fingerprints = newFingerprints();
   for (const tally of tallies) {
     const handle: Parameters<typeof readShipments>[3] = (shipment) => {
-      addShipment(fleet, shipment);
+      const lot = addShipment(fleet, shipment);
       if (shipment.unit === '') return;
-      fingerprints.add(shipment.unit);
-      meetShipment(departures, shipment);
+      const print = fingerprint(shipment.unit);
+      fingerprints.add(print);
+      meetShipment(departures, shipment.unit, print, lot);
     };
-    await readShipments(config, tally, cutoff, handle, await byteProgress(tally.source, progress));
+    await readShipments(config, tally, cutoff, handle, await byteProgress(tally, progress));
   }
   const { removed, conflicting } = await findDuplicates(config, tallies, cutoff, fingerprints.takeRepeated());
   for (const shipment of removed) removeShipment(fleet, shipment);
@@ -64,21 +65,31 @@ async function readFleet(
   return fleet;
 }
 
+function keepLeaving(departures: Departures, leaving: Leaving): void {
+  addLeaving(departures, leaving, leaving.unit === null ? 0 : fingerprint(leaving.unit));
+}
+
 /** @throws UserError exit 3 when returns name units alone and no shipment names any. */
 function checkUnits(fleet: Fleet, departures: Departures): void {
   if (fleet.unitRows > 0) return;
-  for (const { leavings } of departures.units.values()) {
-    const alone = leavings.find((row) => row.product === null || row.shipped === null);
-    if (alone === undefined) continue;
+  for (const row of leavingsIn(departures)) {
+    if (row.product !== null && row.shipped !== null) continue;
     const message = 'invalid rows: they name only a unit, and the shipments do not name units';
     const remedy = 'give shipments by unit, or product and ship_date in these rows';
-    throw new UserError({ code: 'units-not-shipped', file: alone.tally.source.name, message, remedy }, 3);
+    throw new UserError({ code: 'units-not-shipped', file: row.tally.source.name, message, remedy }, 3);
   }
 }
 
-function* datesOf(fleet: Fleet, claims: readonly Claim[]): Generator<DatedQuantity> {
+function* datesOf(fleet: Fleet, departures: Departures): Generator<DatedQuantity> {
   for (const { lots } of fleet.products.values()) {
     for (const { shipped, quantity } of lots.values()) yield { range: shipped, quantity };
   }
-  for (const { when, quantity } of claims) yield { range: when, quantity };
+  for (const { when, quantity } of leavingsIn(departures)) yield { range: when, quantity };
+}
+
+function* leavingsIn({ units, counted }: Departures): Generator<Leaving> {
+  yield* counted;
+  for (const first of units.values()) {
+    for (let row: Leaving | null = first; row !== null; row = row.next) yield row;
+  }
 }

@@ -1,5 +1,5 @@
 import { compareText } from '../csv.js';
-import type { Claim } from './claims.js';
+import type { Claim } from './claim.js';
 import type { Dated } from './dated.js';
 import type { Leaving } from './leavings.js';
 import { rejectRow } from './tally.js';

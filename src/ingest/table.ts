@@ -2,7 +2,8 @@ import type { Config } from '../config.js';
 import type { Finding, ProductRecords, Progress, Sources } from '../records.js';
 import { cutoffOf, type DatedQuantity, missingAsOf } from './asof.js';
 import { assemble } from './assemble.js';
-import type { Claim } from './claims.js';
+import type { Claim } from './claim.js';
+import type { ProductClaims } from './claims.js';
 import { addShipment, newFleet } from './fleet.js';
 import { readPlans } from './plan.js';
 import type { Reading } from './reading.js';
@@ -29,7 +30,7 @@ export async function readTables(config: Config, sources: Sources, progress: Pro
   const left = usableWithdrawals(withdrawn.rows, cohorts, fleet, cutoff);
   const plan = await readPlans(config, sources.plan, cutoff, fleet, progress);
   const claims = [...claimsOf('returned', cohorts, cutoff), ...claimsOf('withdrawn', left, cutoff)];
-  const parts = { fleet, claims, plans: plan.plans, returnsFiles: table.tallies };
+  const parts = { fleet, claims: sorted(claims), plans: plan.plans, returnsFiles: table.tallies };
   const products = assemble(config, parts, cutoff);
   return {
     products,
@@ -44,6 +45,16 @@ function claimsOf(kind: Claim['kind'], rows: readonly CohortRow[], cutoff: numbe
       .filter(({ when }) => when.from < cutoff)
       .map(({ when, quantity }) => ({ kind, product, shipped: shippedIn, when, quantity, rows: [] })),
   );
+}
+
+function sorted(claims: readonly Claim[]): Map<string, ProductClaims> {
+  const products = new Map<string, ProductClaims>();
+  for (const claim of claims) {
+    const ofProduct = products.get(claim.product);
+    if (ofProduct === undefined) products.set(claim.product, { units: [], counted: [claim] });
+    else ofProduct.counted.push(claim);
+  }
+  return products;
 }
 
 function* datesOf(rows: readonly CohortRow[]): Generator<DatedQuantity> {

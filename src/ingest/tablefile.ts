@@ -37,12 +37,7 @@ export async function readCohortRows(
         if (row !== null) rows.push(row);
       };
     };
-    tally.read = await readRows(
-      tally.source,
-      input.encoding,
-      begin,
-      await byteProgress(tally.source, progress),
-    );
+    tally.read = await readRows(tally.source, input.encoding, begin, await byteProgress(tally, progress));
   }
   return { rows, tallies };
 }

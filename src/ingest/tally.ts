@@ -8,6 +8,8 @@ export interface FileTally {
   readonly role: InputRole;
   columns: Columns | null;
   read: number;
+  /** Size and SHA-256 of the file, null until they are asked for. */
+  digest: Awaited<ReturnType<Source['digest']>> | null;
   readonly rejects: RejectRow[];
   /** Units in rejected rows, by the product that they name. */
   readonly rejectedUnits: Map<string, number>;
@@ -29,7 +31,7 @@ export interface RowRef {
 export const longestCell = 1000;
 
 export function newTally(source: Source, role: InputRole): FileTally {
-  return { source, role, columns: null, read: 0, rejects: [], rejectedUnits: new Map() };
+  return { source, role, columns: null, read: 0, digest: null, rejects: [], rejectedUnits: new Map() };
 }
 
 /** Puts a row among the rejected ones. @param field our name of the column at fault, null when it is the whole row. */
@@ -52,7 +54,7 @@ export function shownRow(cells: readonly string[]): string {
 
 /** The account: every row read is used, rejected or set aside. */
 export async function fileAccount(tally: FileTally): Promise<FileAccount> {
-  const { bytes, sha256 } = await tally.source.digest();
+  const { bytes, sha256 } = tally.digest ?? (await tally.source.digest());
   const rejected = tally.rejects.filter((row) => row.kind === 'rejected').length;
   const setAside = tally.rejects.length - rejected;
   return {
