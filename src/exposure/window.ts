@@ -9,7 +9,8 @@ export interface Window {
   readonly knots: readonly number[];
   /** From 0 up to this age the weight is 1 (0 when it is nowhere 1 from the start on). */
   readonly full: number;
-  /** From this age on it is 0. */
+  /** Between these ages it is neither 1 nor nothing; from `end` on it is 0. */
+  readonly rampFrom: number;
   readonly end: number;
   readonly weight: (age: number) => number;
   /** Two windows with the same key are equal. */
@@ -22,6 +23,7 @@ export function returnedBy(shipped: DayRange, until: number, cap: number): Windo
   return {
     knots: [near, far, cap],
     full: Math.min(near, cap),
+    rampFrom: Math.min(near, cap),
     end: Math.min(far, cap),
     weight: (age) => clamp((far - age) / (far - near)),
     key: `b ${near} ${far} ${far <= cap ? '' : cap}`,
@@ -35,6 +37,7 @@ export function returnedWithin(shipped: DayRange, range: DayRange, cap: number):
   return {
     knots: [...before.knots, ...after.knots],
     full: 0,
+    rampFrom: range.from - shipped.to,
     end: after.end,
     weight: (age) => after.weight(age) - before.weight(age),
     key: `c ${range.from - shipped.from} ${after.key}`,
@@ -50,6 +53,7 @@ export function returnedBeforeExit(shipped: DayRange, range: DayRange, cap: numb
   return {
     knots: [near, ...corners, far, cap],
     full: Math.min(Math.max(0, near), cap),
+    rampFrom: Math.min(near, cap),
     end: Math.min(far, cap),
     weight: (age) =>
       clamp(
@@ -60,6 +64,30 @@ export function returnedBeforeExit(shipped: DayRange, range: DayRange, cap: numb
           widths,
       ),
     key: `w ${near} ${corners[0]} ${corners[1]} ${far} ${far <= cap ? '' : cap}`,
+  };
+}
+
+/** Returns up to a known age. */
+export function returnedUntilAge(age: number): Window {
+  return {
+    knots: [age],
+    full: age,
+    rampFrom: age,
+    end: age,
+    weight: (t) => (t < age ? 1 : 0),
+    key: `a ${age}`,
+  };
+}
+
+/** Weight 1 at `age`, falling to 0 at the ages before and after. */
+export function hat(before: number, age: number, after: number): Window {
+  return {
+    knots: [before, age, after],
+    full: 0,
+    rampFrom: before,
+    end: after,
+    weight: (t) => clamp(t < age ? (t - before) / (age - before) : (after - t) / (after - age)),
+    key: `h ${age}`,
   };
 }
 

@@ -2,6 +2,7 @@ import type { Family } from '../families/family.js';
 import { type Maximum, maximise } from '../math/maximise.js';
 import { gammaDraw, randomStream } from '../math/random.js';
 import type { ParameterDraws } from '../records.js';
+import { coarseTerms } from './coarse.js';
 import { logLikelihood } from './likelihood.js';
 import { type LaidTerms, layTerms, type Terms } from './terms.js';
 
@@ -24,14 +25,15 @@ export function parameterDraws(
 ): Omit<ParameterDraws, 'findings'> | null {
   const k = best.length;
   const free = new Float64Array(draws * k);
-  const refit = refitter(terms, layTerms(terms, 'draw'), family);
-  const centre = refit(terms.counts, best)?.point ?? best;
+  const coarse = coarseTerms(terms);
+  const refit = refitter(coarse, layTerms(coarse, 'draw'), family);
+  const centre = refit(coarse.counts, best)?.point ?? best;
   let restarted = 0;
   for (let b = 0; b < draws; b++) {
     let point: Float64Array | null = null;
     for (let attempt = 0; point === null; attempt++) {
       if (restarted > allowedFailures * draws) return null;
-      point = refit(randomWeights(terms.counts, [...seed, 'weights', b, attempt]), centre)?.point ?? null;
+      point = refit(randomWeights(coarse.counts, [...seed, 'weights', b, attempt]), centre)?.point ?? null;
       if (point === null) restarted++;
     }
     free.set(family.logLocationScale ? pivotal(best, centre, point) : shifted(best, centre, point), b * k);

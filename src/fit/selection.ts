@@ -1,6 +1,7 @@
 import { familyNamed } from '../families/index.js';
 import type { CandidateFit } from '../records.js';
 import { aicc } from './choice.js';
+import { coarseTerms } from './coarse.js';
 import { randomWeights, refitter } from './draws.js';
 import { layTerms, type Terms } from './terms.js';
 
@@ -15,12 +16,13 @@ export function withChosenShares(
   refits: number,
   seed: readonly (string | number)[],
 ): CandidateFit[] {
-  const laid = layTerms(terms, 'draw');
+  const coarse = coarseTerms(terms);
+  const laid = layTerms(coarse, 'draw');
   const standing = candidates.filter((candidate) => candidate.ruledOut === null);
   const contests = standing.map((candidate) => {
     const family = familyNamed(candidate.family);
     const start = family.free(family.parameterNames.map((name) => candidate.parameters[name] as number));
-    const refit = refitter(terms, laid, family);
+    const refit = refitter(coarse, laid, family);
     return (weights: Float64Array) => {
       const value = refit(weights, start)?.value;
       return value === undefined
@@ -30,7 +32,7 @@ export function withChosenShares(
   });
   const wins = new Float64Array(standing.length);
   for (let b = 0; b < refits; b++) {
-    const weights = randomWeights(terms.counts, [...seed, 'weights', b, 0]);
+    const weights = randomWeights(coarse.counts, [...seed, 'weights', b, 0]);
     const scores = contests.map((contest) => contest(weights));
     const winner = scores.indexOf(Math.min(...scores));
     wins[winner] = (wins[winner] as number) + 1;
