@@ -4,6 +4,7 @@ import type { MonthEnd } from '../records.js';
 import { type Flags, overrideStored } from '../settings.js';
 import type { Invocation } from './arguments.js';
 import { readEarlier } from './earlier.js';
+import { missingInput } from './failure.js';
 import { hasInput, loadSettings } from './settings-file.js';
 
 /** Where a command starts from: records to read, or what an earlier command left. */
@@ -16,9 +17,6 @@ export interface Start {
   /** Set when nothing is left to compute: a report from finished documents. */
   readonly finished: MonthEnd | null;
 }
-
-/** Code of the fault that asks for help to be printed. */
-export const missingInput = 'missing-input';
 
 /** @throws UserError exit 2 for settings and flags that cannot be used, 3 for an earlier folder that cannot be read. */
 export function begin(invocation: Invocation): Start {

@@ -17,6 +17,9 @@ type Detail = {
   readonly [Key in 'code' | 'message' | 'file' | 'line' | 'column' | 'remedy']: Fault[Key] | null;
 };
 
+/** Code of the fault beside which help is printed: a command without settings and without records. */
+export const missingInput = 'missing-input';
+
 /** One line a fault; the stack only when `verbose`. Whatever is not a UserError is a fault of the program. */
 export function describeFailure(error: unknown, verbose: boolean): Failure {
   const { faults, exitCode } = error instanceof UserError ? error : programFault(error);

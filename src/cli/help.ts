@@ -53,16 +53,16 @@ const examples: Readonly<Record<CommandName | 'program', readonly string[]>> = {
     'returnfall run --help              (inputs, choices and examples of a command)',
   ],
   table: [
-    'returnfall table --shipments "shipped-*.csv" --returns returned.csv \\\\',
+    'returnfall table --shipments "shipped-*.csv" --returns returned.csv \\',
     '    --as-of 2026-10-31',
     'returnfall table --settings month-end/returnfall.json --out october',
     'export-shipments | returnfall table --shipments - --returns returned.csv \\',
     '    --as-of 2026-10-31',
   ],
   fit: [
-    'returnfall fit --shipments shipped.csv --returns returned.csv \\\\',
+    'returnfall fit --shipments shipped.csv --returns returned.csv \\',
     '    --as-of 2026-10-31',
-    'returnfall fit --table table.csv \\\\',
+    'returnfall fit --table table.csv \\',
     '    --as-of 2026-10-31 --candidates weibull,lognormal',
     'returnfall fit --ages bearings.csv',
   ],
@@ -70,7 +70,7 @@ const examples: Readonly<Record<CommandName | 'program', readonly string[]>> = {
     'returnfall forecast --shipments shipped.csv --returns returned.csv \\',
     '    --as-of 2026-10-31 --horizon 6',
     'returnfall forecast --from october --levels 0.5,0.9 --json',
-    'returnfall forecast --settings returnfall.json --period quarter --horizon 4 --out october',
+    'returnfall forecast --settings returnfall.json --period quarter --horizon 4',
   ],
   report: [
     'returnfall report --from october --out october-report',

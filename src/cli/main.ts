@@ -2,9 +2,7 @@
 import { readFileSync } from 'node:fs';
 import { exitCodes, UserError } from '../errors.js';
 import { helpText, type Invocation, parseArguments } from './arguments.js';
-import { missingInput } from './begin.js';
-import { runCommand } from './command.js';
-import { describeFailure } from './failure.js';
+import { describeFailure, missingInput } from './failure.js';
 import { openScope } from './scope.js';
 import { processTerminal } from './terminal.js';
 
@@ -44,6 +42,8 @@ async function runToEnd(invocation: Invocation, version: string): Promise<number
   onSignal('SIGINT', 130);
   onSignal('SIGTERM', 143);
   try {
+    // Loaded only now: help and faults of the command line should not wait for what they do not need.
+    const { runCommand } = await import('./command.js');
     return await runCommand(invocation, { version, scope, terminal, signal: controller.signal });
   } finally {
     scope.close();

@@ -3,7 +3,18 @@ import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { contentsOf, type Ended, openWorkplace, type Workplace } from './program.js';
 import { asOf, returnsCsv, shipmentsCsv } from './records.js';
 
-const month = ['--shipments', 's.csv', '--returns', 'r.csv', '--as-of', asOf, '--draws', '200'];
+const month = [
+  '--shipments',
+  's.csv',
+  '--returns',
+  'r.csv',
+  '--as-of',
+  asOf,
+  '--draws',
+  '200',
+  '--candidates',
+  'weibull,exponential',
+];
 
 let place: Workplace;
 beforeEach(() => {
@@ -46,7 +57,7 @@ describe('input that cannot be used', () => {
   ];
   it.each(cases)('%s', async (_, make, code, message) => {
     make();
-    const words = ['run', ...month, '--shipments', 'gone.csv'];
+    const words = ['run', '--shipments', 'gone.csv', '--returns', 'r.csv', '--as-of', asOf];
     expectFault(await place.run(words), code, message);
     expect(existsSync(place.path('returnfall-out'))).toBe(false);
   });

@@ -3,10 +3,11 @@ import { tableText } from '../../src/cli/print/table.js';
 import {
   alignColumns,
   countText,
+  measureText,
   numberText,
+  plainNumber,
   printable,
   shorten,
-  significant,
 } from '../../src/cli/print/text.js';
 import type { IntakeDocument, TableRow } from '../../src/records.js';
 
@@ -69,7 +70,7 @@ describe('tableText', () => {
   it('keeps the newest periods, as many as fit, and says which are summed', () => {
     const text = tableText(nevada('HV-200'), 80);
     expect(text).toMatch(
-      /^earlier: 29 return periods, 2024-01 to 2026-05 \(all of them are in table\.csv\)$/m,
+      /^earlier: 29 return periods, 2024-01 to 2026-05 \(all in table\.csv, with --out\)$/m,
     );
     expect(tableText(nevada('HV-200'), 400)).not.toContain('earlier');
   });
@@ -100,11 +101,14 @@ describe('texts', () => {
       ['1,234,567.89', '0', '-1,234', '-'],
     );
     expect([countText(9.94), countText(9.96), countText(1234.5)]).toEqual(['9.9', '10', '1,235']);
-    expect([significant(4210.512), significant(1.31), significant(1e-7), significant(0)]).toEqual([
-      '4210.5',
-      '1.31',
+    expect([4210.512, 1.31, 0.42773, 12351.4, 1e-7, 0].map(measureText)).toEqual([
+      '4,211',
+      '1.310',
+      '0.4277',
+      '12,351',
       '1.000e-7',
       '0',
     ]);
+    expect([1096, 95, 99.9, 0.1 + 0.2].map(plainNumber)).toEqual(['1096', '95', '99.9', '0.3']);
   });
 });

@@ -1,4 +1,5 @@
 import { spawn } from 'node:child_process';
+import { createHash } from 'node:crypto';
 import { mkdirSync, mkdtempSync, readdirSync, readFileSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { dirname, join } from 'node:path';
@@ -40,7 +41,7 @@ export function openWorkplace(): Workplace {
   };
 }
 
-/** Every file below a folder with its bytes, in the order of their names. */
+/** Every file below a folder with its bytes as Latin-1 text, in the order of their names. */
 export function contentsOf(folder: string, below = ''): Map<string, string> {
   const names = readdirSync(join(folder, below)).sort();
   return new Map(
@@ -49,6 +50,14 @@ export function contentsOf(folder: string, below = ''): Map<string, string> {
       if (statSync(join(folder, path)).isDirectory()) return [...contentsOf(folder, path)];
       return [[path, readFileSync(join(folder, path), 'latin1')] as const];
     }),
+  );
+}
+
+/** Every file below a folder with a digest of its bytes, but for timing.json, whose seconds may differ. */
+export function digestsOf(folder: string): Map<string, string> {
+  const files = [...contentsOf(folder)].filter(([name]) => name !== 'timing.json');
+  return new Map(
+    files.map(([name, text]) => [name, createHash('sha256').update(text, 'latin1').digest('hex')]),
   );
 }
 

@@ -1,6 +1,6 @@
 import type { CandidateFit, FitDocument, FitProduct } from '../../records.js';
 import { candidateName, nameOf } from './names.js';
-import { type Align, alignColumns, numberText, printable, significant } from './text.js';
+import { type Align, alignColumns, measureText, numberText, plainNumber, printable } from './text.js';
 
 const aligns: readonly Align[] = ['left', 'left', 'right', 'right', 'right', 'right', 'right', 'right'];
 const head = ['', 'parameter', 'estimate', 'from', 'to', 'log L', 'AICc', 'weight'];
@@ -30,8 +30,8 @@ function title(product: FitProduct, unit: string): string {
     `${numberText(returns)} returns`,
     `${numberText(withdrawn)} withdrawn`,
     `${numberText(survivors)} survivors`,
-    `oldest age ${significant(oldestAge)} ${unitText(unit)}`,
-    ...(delayDays > 0 ? [`delay ${significant(delayDays)} days`] : []),
+    `oldest age ${plainNumber(oldestAge)} ${unitText(unit)}`,
+    ...(delayDays > 0 ? [`delay ${plainNumber(delayDays)} days`] : []),
   ];
   return `${nameOf(product)}: ${counts.join(', ')}`;
 }
@@ -46,7 +46,7 @@ function candidateRows(candidate: CandidateFit, chosen: boolean): string[][] {
     return [
       first ? `${chosen ? '*' : ' '} ${candidateName(candidate)}` : '',
       name,
-      significant(value),
+      measureText(value),
       boundText(interval?.lower),
       boundText(interval?.upper),
       first ? numberOrDash(candidate.logLikelihood) : '',
@@ -59,7 +59,7 @@ function candidateRows(candidate: CandidateFit, chosen: boolean): string[][] {
 function intervalNote(candidates: readonly CandidateFit[], unit: string): string {
   const level = candidates.flatMap((c) => Object.values(c.intervals))[0]?.level;
   const intervals =
-    level === undefined ? '' : `; from, to: ${significant(100 * level)} % likelihood-ratio interval`;
+    level === undefined ? '' : `; from, to: ${plainNumber(100 * level)} % likelihood-ratio interval`;
   return `* chosen; ages in ${unitText(unit)}${intervals}`;
 }
 
@@ -69,7 +69,7 @@ function ruledOutLine(candidate: CandidateFit): string[] {
 }
 
 function boundText(bound: number | null | undefined): string {
-  return bound === undefined || bound === null ? '-' : significant(bound);
+  return bound === undefined || bound === null ? '-' : measureText(bound);
 }
 
 function numberOrDash(value: number | null): string {

@@ -1,7 +1,7 @@
 import { intervalKeys } from '../../quantiles.js';
 import type { ForecastDocument, ForecastProduct, PredictedCount } from '../../records.js';
 import { nameOf } from './names.js';
-import { type Align, alignColumns, countText, numberText, printable, significant } from './text.js';
+import { type Align, alignColumns, countText, numberText, plainNumber, printable } from './text.js';
 
 type Block = Pick<ForecastDocument['total'], 'periods' | 'untilWarrantyEnds'>;
 
@@ -20,7 +20,7 @@ export function intervalText(count: PredictedCount, level: number): string {
 
 /** `80 %` */
 export function levelText(level: number): string {
-  return `${significant(100 * level)} %`;
+  return `${plainNumber(100 * level)} %`;
 }
 
 function productLines(product: ForecastProduct, levels: readonly number[]): string[] {

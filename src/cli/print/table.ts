@@ -1,7 +1,7 @@
 import { compareText } from '../../csv.js';
 import type { AgeGroup, IntakeDocument, IntakeProduct, NevadaTable, TableRow } from '../../records.js';
 import { nameOf } from './names.js';
-import { type Align, alignColumns, numberText, printable, significant } from './text.js';
+import { type Align, alignColumns, numberText, plainNumber, printable } from './text.js';
 
 /**
  * The Nevada-style table of every product, to be read on a terminal.
@@ -26,7 +26,7 @@ function body(product: IntakeProduct, document: IntakeDocument, width: number): 
   if (left === 0) return lines;
   const first = product.table.periods[0] ?? '';
   const last = product.table.periods[left - 1] ?? '';
-  return [...lines, `earlier: ${left} return periods, ${first} to ${last} (all of them are in table.csv)`];
+  return [...lines, `earlier: ${left} return periods, ${first} to ${last} (all in table.csv, with --out)`];
 }
 
 /** The greatest number of newest periods whose table is no wider than `width`, at least one. */
@@ -73,8 +73,8 @@ function cells(row: TableRow, periods: readonly string[], left: number, withdraw
 function ageLines(ages: readonly AgeGroup[], unit: string): string[] {
   const rows = ages.map((group) => [
     group.outcome,
-    significant(group.from),
-    group.from === group.to ? '' : significant(group.to),
+    plainNumber(group.from),
+    group.from === group.to ? '' : plainNumber(group.to),
     numberText(group.quantity),
   ]);
   const head = ['outcome', `age (${printable(unit)})`, 'to', 'quantity'];

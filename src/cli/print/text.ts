@@ -44,12 +44,16 @@ export function countText(value: number): string {
   return numberText(value, Math.abs(value) < 9.95 ? 1 : 0);
 }
 
-/** A parameter or an age: five significant digits, without an exponent where it can be avoided. */
-export function significant(value: number): string {
-  if (!Number.isFinite(value)) return '-';
+/** A parameter: four significant digits at least, never fewer than the whole ones. */
+export function measureText(value: number): string {
   const magnitude = Math.abs(value);
   if (magnitude !== 0 && (magnitude < 1e-4 || magnitude >= 1e9)) return value.toExponential(3);
-  return String(Number(value.toPrecision(5)));
+  return numberText(value, magnitude === 0 ? 0 : Math.max(0, 3 - Math.floor(Math.log10(magnitude))));
+}
+
+/** An age or a percentage: six significant digits at most, without idle zeros. */
+export function plainNumber(value: number): string {
+  return Number.isFinite(value) ? String(Number(value.toPrecision(6))) : '-';
 }
 
 function lengthOf(text: string): number {
