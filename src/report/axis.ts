@@ -13,7 +13,15 @@ export interface Tick {
  * Pixels down. Charts stretch with the page: heights are pixels, places across are percent of the width, and paths are
  * drawn on a width of 1000 that is stretched without their strokes.
  */
-export const frame = { height: 300, top: 28, bottom: 268, pathWidth: 1000 } as const;
+export const frame = {
+  height: 300,
+  top: 28,
+  bottom: 268,
+  pathWidth: 1000,
+  /** Curves that leave the axis are cut here. */
+  clipTop: 20,
+  clipHeight: 248,
+} as const;
 
 /** Rounded to two decimals, as every number in an SVG is. */
 export function svgNumber(value: number): number {

@@ -1,6 +1,6 @@
 /** The table of candidate distributions. */
 import type { CandidateFit, CandidateForecast, FitProduct, ParameterInterval } from '../records.js';
-import { criterionText, expectedText, measureText, percentText } from './numbers.js';
+import { criterionText, expectedText, measureText, percentText, weightText } from './numbers.js';
 
 /** What tells one candidate from another. */
 type Candidate = Pick<CandidateFit, 'family' | 'atRisk'>;
@@ -27,7 +27,7 @@ export function candidateRows(fit: FitProduct, forecasts: readonly CandidateFore
       parameters: parameterTexts(candidate, ageUnit),
       logLikelihood: criterionText(candidate.logLikelihood),
       aicc: criterionText(candidate.aicc),
-      weight: candidate.ruledOut === null ? percentText(candidate.weight) : 'none',
+      weight: candidate.ruledOut === null ? weightText(candidate.weight) : 'none',
       chosenShare: percentText(candidate.chosenShare),
       nextPeriod: expectedText(own?.nextPeriod ?? null),
       horizon: expectedText(own?.horizon ?? null),

@@ -80,7 +80,7 @@ function pointMark(point: NonparametricPoint, { x, y, unitLength }: Placing, uni
     x: svgNumber(x(age)),
     y: svgNumber(y(point.probability)),
     lower: svgNumber(y(point.lower)),
-    upper: svgNumber(Math.max(y(point.upper), frame.top - 6)),
+    upper: svgNumber(Math.max(y(point.upper), frame.clipTop)),
     label: `${measureText(age)} ${unit}: ${percentText(point.probability)} returned`,
   };
 }

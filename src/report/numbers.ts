@@ -33,6 +33,11 @@ export function percentText(share: number | null): string {
   return share === null ? noNumber : `${threeDigits(share * 100)}\u00a0%`;
 }
 
+/** A weight among candidates: `28.4 %`, `below 0.1 %`. */
+export function weightText(weight: number): string {
+  return weight < 0.001 ? `below ${percentText(0.001)}` : percentText(Number(weight.toFixed(3)));
+}
+
 /** A parameter or an age, four significant digits, thousands grouped: `4,211`, `1.31`. */
 export function measureText(value: number | null): string {
   if (value === null) return noNumber;

@@ -1,0 +1,207 @@
+import { createHash } from 'node:crypto';
+import { describe, expect, it } from 'vitest';
+import type { ForecastDocument } from '../../src/records.js';
+import { slugOf } from '../../src/report/names.js';
+import { type ReportInput, renderReport } from '../../src/report/report.js';
+import { agesInput, fixtureProducts, hostileName, reportInput } from '../support/report-input.js';
+import { readTemplates } from '../support/templates.js';
+
+const templates = readTemplates();
+const input = reportInput();
+const forecast = input.forecast as ForecastDocument;
+const pages = renderReport(input, templates, { singleFile: false });
+const single = renderReport(input, templates, { singleFile: true });
+
+function page(name: string, from = pages): string {
+  const text = from.get(name);
+  if (text === undefined) throw new Error(`no page ${name}`);
+  return text;
+}
+
+function productPage(product: string): string {
+  return page(`products/${slugOf(product, null)}.html`);
+}
+
+/** Text of the cells of every row of the first table of a class. */
+function tableRows(html: string, className: string): readonly (readonly string[])[] {
+  const table = html.slice(html.indexOf(`<table class="${className}"`));
+  const body = table.slice(table.indexOf('<tbody>'), table.indexOf('</tbody>'));
+  const cells = (row: string) => [...row.matchAll(/<t[hd][^>]*>(.*?)<\/t[hd]>/gs)].map((m) => m[1] ?? '');
+  return [...body.matchAll(/<tr[^>]*>(.*?)<\/tr>/gs)].map((m) => cells(m[1] ?? ''));
+}
+
+/** The page's rule, worked without the report's own code: one decimal below 10, else whole, commas. */
+function shown(value: number): string {
+  const text = value.toFixed(1);
+  return Number(text) < 10
+    ? text
+    : Math.round(value)
+        .toFixed(0)
+        .replace(/\B(?=(\d{3})+$)/g, ',');
+}
+
+describe('the set of pages', () => {
+  it('is an index and a page a product, or one file', () => {
+    const names = fixtureProducts.map((p) => `products/${slugOf(p.product, null)}.html`);
+    expect([...pages.keys()].toSorted()).toEqual(['index.html', ...names].toSorted());
+    expect([...single.keys()]).toEqual(['index.html']);
+  });
+
+  it('links every product page from the index, and none from the single file', () => {
+    for (const name of pages.keys())
+      if (name !== 'index.html') expect(page('index.html')).toContain(`href="${name}"`);
+    expect(page('index.html', single)).not.toContain('href="products/');
+    expect(page('index.html', single)).toContain('<table class="heat">');
+  });
+
+  it('is the same text every time', () => {
+    expect([...renderReport(reportInput(), templates, { singleFile: false })]).toEqual([...pages]);
+  });
+
+  it('has no id twice on a page', () => {
+    for (const text of [...pages.values(), ...single.values()]) {
+      const ids = [...text.matchAll(/ id="([^"]*)"/g)].map((m) => m[1]);
+      expect(ids.filter((id, i) => ids.indexOf(id) !== i)).toEqual([]);
+    }
+  });
+});
+
+describe('a page by itself', () => {
+  const all = [...pages.values(), ...single.values()];
+
+  it('allows only its own style, by its hash', () => {
+    for (const text of all) {
+      const style = /<style>(.*?)<\/style>/s.exec(text)?.[1] ?? '';
+      const hash = createHash('sha256').update(style, 'utf8').digest('base64');
+      expect(text).toContain(`content="default-src 'none'; style-src 'sha256-${hash}';`);
+    }
+  });
+
+  it('hashes the style as a browser reads it, whatever its line ends', () => {
+    const crlf = { ...templates, 'style.css': (templates['style.css'] ?? '').replaceAll('\n', '\r\n') };
+    expect(renderReport(input, crlf, { singleFile: false }).get('index.html')).toBe(page('index.html'));
+  });
+
+  it('has no script, no inline style, no address beyond the report', () => {
+    for (const text of all) {
+      expect(text).not.toMatch(/<script|\sstyle=|\son[a-z]+="|javascript:/i);
+      expect(text.match(/(?:src|href)="(?!#|products\/|\.\.\/index\.html)[^"]*"/g)).toBeNull();
+      expect(text).not.toMatch(/https?:|@import|url\((?!#)/);
+    }
+  });
+
+  it('shows hostile names as text', () => {
+    expect(productPage(hostileName)).toContain(
+      '<h1>&lt;script&gt;alert(&quot;x&quot;)&lt;/script&gt; &amp; &#x27;quoted&#x27; {{braces}}',
+    );
+  });
+
+  it('gives every chart a title, a description and its numbers', () => {
+    for (const text of all) {
+      const charts =
+        text.match(
+          /<svg role="img"[^>]*>\s*<title id="[^"]+">[^<]+<\/title>\s*<desc id="[^"]+">[^<]+<\/desc>/g,
+        ) ?? [];
+      expect(charts).toHaveLength(text.split('role="img"').length - 1);
+    }
+    expect(productPage('Brook 40')).toContain('Recorded returns by month, as numbers');
+    expect(productPage('Brook 40')).toContain('Nonparametric estimate, as numbers');
+  });
+
+  it('holds no NaN, undefined or null', () => {
+    for (const text of all) expect(text).not.toMatch(/NaN|undefined|\bnull\b|\[object/);
+  });
+});
+
+describe('numbers on the page', () => {
+  it('shows the forecast of each product as forecast.json has it', () => {
+    for (const product of forecast.products.filter((p) => p.notForecast === null)) {
+      const rows = tableRows(productPage(product.product), 'numbers forecast');
+      expect(rows).toHaveLength(product.periods.length);
+      for (const [i, period] of product.periods.entries()) {
+        const q = (count: typeof period.cumulative, lower: string, upper: string) =>
+          `${(count.quantiles[lower] ?? -1).toLocaleString('en-US')} to ${(count.quantiles[upper] ?? -1).toLocaleString('en-US')}`;
+        const counts = [period, period.cumulative].flatMap((count) => [
+          shown(count.expected),
+          q(count, '0.1', '0.9'),
+          q(count, '0.025', '0.975'),
+        ]);
+        expect(rows[i]?.slice(1, 7)).toEqual(counts);
+      }
+    }
+  });
+
+  it('draws bars as high as the counts', () => {
+    const history = forecast.total.history.map((h) => h.returned);
+    const chart = page('index.html').split('</figure>')[0] ?? '';
+    const heights = [...chart.matchAll(/<rect class="bar" [^>]*height="([\d.]+)"><title>/g)].map((m) =>
+      Number(m[1]),
+    );
+    expect(heights).toHaveLength(history.length);
+    const unit = Math.max(...heights) / Math.max(...history);
+    for (const [i, height] of heights.entries())
+      expect(Math.abs(height - unit * (history[i] ?? 0))).toBeLessThan(0.02);
+  });
+
+  it('says the headline with its interval', () => {
+    const [next, last] = [forecast.total.periods[0], forecast.total.periods.at(-1)];
+    const { expected, quantiles } = next as NonNullable<typeof next>;
+    const lead = /<p class="lead">(.*?)<\/p>/.exec(page('index.html'))?.[1] ?? '';
+    expect(lead).toContain(
+      `Expect ${shown(expected)} returns in November 2026, between ${quantiles['0.1']} and ${quantiles['0.9']} (80\u00a0%)`,
+    );
+    expect(lead).toContain(`${shown(last?.cumulative.expected ?? 0)} over the 12 months to 31 October 2027`);
+  });
+
+  it('fills the heat map with the table, survivors last', () => {
+    const product = input.table.products.find((p) => p.product === 'Brook 40');
+    const rows = tableRows(productPage('Brook 40'), 'heat');
+    for (const [i, row] of (product?.table?.rows ?? []).entries()) {
+      const cells = row.returned.map((units, column) =>
+        column < i ? '' : units === 0 ? '·' : String(units),
+      );
+      expect(rows[i]?.slice(2, 2 + cells.length)).toEqual(cells);
+      expect(rows[i]?.at(-1)).toBe(String(row.survivors));
+    }
+  });
+
+  it('lists each currency of the cost apart', () => {
+    expect(page('index.html')).toMatch(/<span>CHF\u00a0[\d,]+<\/span> <span>EUR\u00a0[\d,]+<\/span>/);
+  });
+});
+
+describe('what is missing is said', () => {
+  it('names products that are not forecast, with the reason', () => {
+    const notice = /<section class="notice".*?<\/section>/s.exec(page('index.html'))?.[0] ?? '';
+    expect(notice).toContain(
+      '<strong>Well 9</strong>: no returns in the records; lend a shape or wait for returns',
+    );
+    expect(productPage('Well 9')).toContain('No forecast: no returns in the records');
+  });
+
+  it('renders a run in which nothing could be forecast', () => {
+    const none = reportInput(fixtureProducts.filter((p) => p.missing));
+    expect(page('index.html', renderReport(none, templates, { singleFile: true }))).toContain(
+      'No product could be forecast.',
+    );
+  });
+
+  it('renders what earlier stages left', () => {
+    const tableOnly: ReportInput = { ...input, fit: null, forecast: null };
+    const text = page('index.html', renderReport(tableOnly, templates, { singleFile: true }));
+    expect(text).toContain('Nothing has been forecast yet');
+    expect(text).toContain('<table class="heat">');
+  });
+
+  it('renders ages without a calendar', () => {
+    const text = page('index.html', renderReport(agesInput(), templates, { singleFile: true }));
+    expect(text).toContain('in the next 500 hours of use, between');
+    expect(text).toContain('<th scope="row">500 to 1,000 hours</th>');
+    expect(text).not.toMatch(/as of|November|Until warranty ends/);
+  });
+
+  it('refuses templates that lack a part', () => {
+    const { 'style.css': _, ...rest } = templates;
+    expect(() => renderReport(input, rest, { singleFile: true })).toThrow('missing template style.css');
+  });
+});
