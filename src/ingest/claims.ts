@@ -1,3 +1,4 @@
+import type { PeriodKind } from '../calendar.js';
 import { type Claim, compareLeaving, originOf } from './claim.js';
 import type { Dated } from './dated.js';
 import type { Departures } from './departures.js';
@@ -14,8 +15,15 @@ export interface ProductClaims {
   readonly counted: Claim[];
 }
 
-/** Sorts returns and withdrawals by product; what cannot be a claim goes into the tallies of its rows. */
-export function claimsByProduct(departures: Departures, fleet: Fleet): Map<string, ProductClaims> {
+/**
+ * Sorts returns and withdrawals by product; what cannot be a claim goes into the tallies of its rows.
+ * @param period within which reversals net.
+ */
+export function claimsByProduct(
+  departures: Departures,
+  fleet: Fleet,
+  period: PeriodKind,
+): Map<string, ProductClaims> {
   const products = new Map<string, ProductClaims>();
   const claimsOf = (product: string) => {
     const claims = products.get(product) ?? { units: [], counted: [] };
@@ -27,7 +35,7 @@ export function claimsByProduct(departures: Departures, fleet: Fleet): Map<strin
     if (first !== null) claimsOf(originOf(first).product).units.push(first);
   }
   const known = departures.counted.filter((leaving) => isKnownProduct(leaving, fleet));
-  for (const claim of netReversals(known)) claimsOf(claim.product).counted.push(claim);
+  for (const claim of netReversals(known, period)) claimsOf(claim.product).counted.push(claim);
   return products;
 }
 
@@ -65,14 +73,21 @@ function fitsCounted(leaving: Leaving, conflicting: boolean, fleet: Fleet): bool
   if (product !== null && !isKnownProduct(leaving, fleet)) return false;
   const counted = product !== null && fleet.products.get(product)?.counted === true;
   if (counted && shipped !== null && !conflicting) return true;
-  const why = conflicting ? 'has several shipments that contradict each other' : 'was never shipped';
+  const why = conflicting
+    ? 'has several shipments that contradict each other'
+    : 'was not shipped by the as-of date';
   rejectRow(leaving, 'unknown-unit', 'unit', `unit ${unit} ${why}`);
   return false;
 }
 
 function isKnownProduct(leaving: Leaving, fleet: Fleet): boolean {
   if (fleet.products.has(leaving.product ?? '')) return true;
-  rejectRow(leaving, 'unknown-product', 'product', `product ${leaving.product} was never shipped`);
+  rejectRow(
+    leaving,
+    'unknown-product',
+    'product',
+    `product ${leaving.product} was not shipped by the as-of date`,
+  );
   return false;
 }
 

@@ -95,7 +95,12 @@ function readPlanned(
     return null;
   }
   if (!fleet.products.has(product)) {
-    rejectRow(refOf(tally, row), 'unknown-product', 'product', `product ${product} was never shipped`);
+    rejectRow(
+      refOf(tally, row),
+      'unknown-product',
+      'product',
+      `product ${product} was not shipped by the as-of date`,
+    );
     return null;
   }
   return { product, cohort: { from: Math.max(period.from, cutoff), to: period.to, shipped } };

@@ -34,7 +34,7 @@ export async function readRecords(config: Config, sources: Sources, progress: Pr
   const fleet = await readFleet(config, shipmentFiles, cutoff, departures, progress);
   checkUnits(fleet, departures);
   if (config.asOf === null) throw missingAsOf(config.period, datesOf(fleet, departures));
-  const claims = claimsByProduct(departures, fleet);
+  const claims = claimsByProduct(departures, fleet, config.period);
   const plan = await readPlans(config, sources.plan, cutoff, fleet, progress);
   const products = assemble(config, { fleet, claims, plans: plan.plans, returnsFiles: leavingFiles }, cutoff);
   return { products, tallies: [...shipmentFiles, ...leavingFiles, ...plan.tallies], findings: [] };

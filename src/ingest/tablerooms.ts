@@ -43,7 +43,7 @@ function isLate(row: CohortRow, cutoff: number): boolean {
 
 function isKnown(row: CohortRow, fleet: Fleet): boolean {
   if (fleet.products.has(row.product)) return true;
-  rejectRow(row, 'unknown-product', 'product', `product ${row.product} was never shipped`);
+  rejectRow(row, 'unknown-product', 'product', `product ${row.product} was not shipped by the as-of date`);
   return false;
 }
 
