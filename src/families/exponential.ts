@@ -7,6 +7,7 @@ export const exponential: Family = {
   name: 'exponential',
   parameterNames: ['scale'],
   logLocationScale: true,
+  spread: () => 1,
   parameters: (free) => [Math.exp(free[0] as number)],
   free: ([scale]) => Float64Array.of(Math.log(requirePositive('scale', scale as number))),
   slopes: (free) => [Math.exp(free[0] as number)],

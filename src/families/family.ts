@@ -20,6 +20,8 @@ export interface Family {
   readonly jetsAt: (free: Float64Array) => Jets;
   /** Start values: free coordinates that agree with a known cdf at two ages (one suffices for one parameter). */
   readonly start: (near: StartPoints) => Float64Array;
+  /** About the standard deviation of log age: how wide the distribution is. */
+  readonly spread: (free: Float64Array) => number;
   /** Location and log scale are the free coordinates, so that parameter draws have a pivotal form. */
   readonly logLocationScale: boolean;
 }

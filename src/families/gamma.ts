@@ -7,6 +7,7 @@ export const gamma: Family = {
   name: 'gamma',
   parameterNames: ['shape', 'scale'],
   logLocationScale: false,
+  spread: (free) => Math.exp(-0.5 * (free[0] as number)),
   parameters: (free) => [Math.exp(free[0] as number), Math.exp(free[1] as number)],
   free: ([shape, scale]) =>
     Float64Array.of(

@@ -7,6 +7,7 @@ export const lognormal: Family = {
   name: 'lognormal',
   parameterNames: ['location', 'scale'],
   logLocationScale: true,
+  spread: (free) => Math.exp(free[1] as number),
   parameters: (free) => [free[0] as number, Math.exp(free[1] as number)],
   free: ([location, scale]) =>
     Float64Array.of(

@@ -7,6 +7,7 @@ export const weibull: Family = {
   name: 'weibull',
   parameterNames: ['scale', 'shape'],
   logLocationScale: true,
+  spread: (free) => Math.exp(free[1] as number),
   parameters: (free) => [Math.exp(free[0] as number), Math.exp(-(free[1] as number))],
   free: ([scale, shape]) =>
     Float64Array.of(

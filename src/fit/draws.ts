@@ -57,7 +57,7 @@ export function refitter(
   const likelihood = logLikelihood(terms, laid, family);
   return (weights, start) => {
     likelihood.counts.set(weights);
-    const maximum = maximise(likelihood, start, { tolerance: 1e-5 });
+    const maximum = maximise(likelihood, start, { tolerance: 1e-5, inside: likelihood.inside });
     return maximum.converged ? maximum : null;
   };
 }

@@ -5,10 +5,17 @@ import type { Surface } from '../math/maximise.js';
 import type { AgeGroup } from '../records.js';
 import type { LaidTerms, Terms } from './terms.js';
 
+const narrowest = 0.01;
+
 /** The log likelihood of SPEC 6.2 in the free coordinates of a family; `counts` may be replaced between evaluations. */
 export interface LogLikelihood extends Surface {
   /** Units (or random weights) behind each term, in the order of the terms. */
   readonly counts: Float64Array;
+  /**
+   * Where a maximum may lie. A spread of log age below 0.01 (a Weibull shape of 100) is narrower than any grid of ages
+   * resolves; a likelihood that rises to there has no maximum worth the name.
+   */
+  readonly inside: (point: Float64Array) => boolean;
 }
 
 /**
@@ -50,7 +57,9 @@ export function logLikelihood(terms: Terms, laid: LaidTerms, family: Family): Lo
     mirror(hessian, k);
     return value;
   };
-  return { size: k, gradient, hessian, counts, evaluate };
+  const inside = (point: Float64Array) =>
+    family.spread(point) > narrowest && point.every((x) => Math.abs(x) <= 80);
+  return { size: k, gradient, hessian, counts, inside, evaluate };
 }
 
 /** Adds units · log P for a block holding P and its derivatives; returns the value's part. */

@@ -39,7 +39,7 @@ export function fitFamilies(problem: Problem, wanted: readonly Family[]): Fitted
 /** Fits one family from given free coordinates. */
 export function fitFrom(problem: Problem, family: Family, start: Float64Array): Fitted {
   const likelihood = logLikelihood(problem.terms, problem.laid, family);
-  return { family, likelihood, maximum: maximise(likelihood, start) };
+  return { family, likelihood, maximum: maximise(likelihood, start, { inside: likelihood.inside }) };
 }
 
 /** Ages at which returns fell, roughly: the first and the last decile of the windows' middles, and of known ages. */

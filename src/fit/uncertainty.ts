@@ -48,7 +48,7 @@ function profileEnd(fitted: Fitted, i: number, side: number, spread: number, dro
   for (let step = 0; step < 100; step++) {
     const start = Float64Array.from(from);
     start[i] = (maximum.point[i] as number) + side * distance;
-    const profile = maximise(likelihood, start, { fixed, tolerance: 1e-12 });
+    const profile = maximise(likelihood, start, { fixed, tolerance: 1e-12, inside: likelihood.inside });
     const root = Math.sqrt(Math.max(0, 2 * (maximum.value - profile.value)));
     if (!profile.converged || root > wanted) farthest = Math.min(farthest, distance);
     else nearest = Math.max(nearest, distance);

@@ -28,8 +28,8 @@ export interface MaximiseOptions {
   readonly tolerance?: number;
   /** Default 100. */
   readonly maxIterations?: number;
-  /** No coordinate may leave [−bound, bound]; default 80. */
-  readonly bound?: number;
+  /** Where a maximum may lie; default every coordinate within [−80, 80]. */
+  readonly inside?: (point: Float64Array) => boolean;
 }
 
 const longestStep = 2;
@@ -39,7 +39,7 @@ const longestStep = 2;
  * its diagonal is raised until it is (Nocedal & Wright 2006, section 3.4). Not converging is a result.
  */
 export function maximise(surface: Surface, start: Float64Array, options: MaximiseOptions = {}): Maximum {
-  const { tolerance = 1e-9, maxIterations = 100, bound = 80 } = options;
+  const { tolerance = 1e-9, maxIterations = 100, inside = withinBounds } = options;
   const free = freeCoordinates(surface.size, options.fixed);
   let point: Float64Array = Float64Array.from(start);
   let value = surface.evaluate(point);
@@ -56,7 +56,7 @@ export function maximise(surface: Surface, start: Float64Array, options: Maximis
       return failed(point, value, 'no step along the slope raised the likelihood', iteration);
     }
     ({ point, value } = moved);
-    if (point.some((x) => Math.abs(x) > bound)) {
+    if (!inside(point)) {
       return failed(
         point,
         value,
@@ -137,6 +137,10 @@ function walk(
     length *= 0.5;
   }
   return null;
+}
+
+function withinBounds(point: Float64Array): boolean {
+  return point.every((x) => Math.abs(x) <= 80);
 }
 
 function freeCoordinates(size: number, fixed: readonly boolean[] | undefined): number[] {
