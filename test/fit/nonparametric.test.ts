@@ -56,13 +56,11 @@ test('exact ages give the product-limit estimate of Kaplan & Meier 1958', () => 
 });
 
 test.each([
-  [1, 3000, 0],
-  [2.2, 1400, 0],
-  // A density that is constant within the first month cannot follow a cdf that is steep at 0.
-  [0.7, 9000, 31],
+  [1, 3000],
+  [2.2, 1400],
 ])(
-  'expected counts of a Weibull (shape %f, scale %f) by month give its cdf back within 1e-3 beyond %i days',
-  (shape, scale, from) => {
+  'expected counts of a Weibull (shape %f, scale %f) by month give its cdf back within 1e-3 at every age',
+  (shape, scale) => {
     const months = Array.from({ length: 24 }, (_, i) => ({
       from: dayNumber(2024, 1 + i, 1),
       to: dayNumber(2024, 2 + i, 1),
@@ -79,7 +77,7 @@ test.each([
       datedProduct('E', cohorts, returned),
     );
     expect(points.length).toBeGreaterThan(20);
-    for (const { age, probability } of points.filter((point) => point.age > from)) {
+    for (const { age, probability } of points) {
       const truth = -Math.expm1(life.family.at(life.free).logSurvival(age));
       expect(Math.abs(probability - truth), `at ${age} days`).toBeLessThan(1e-3);
     }
