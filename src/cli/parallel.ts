@@ -29,7 +29,7 @@ export interface ParallelOptions {
 /** A thread takes 60 to 75 ms to start: below this much work, in seconds, it is not worth it. */
 const worthWorkers = 0.5;
 
-/** `Effects.parallel` on threads; results are in the order of the inputs, whoever finishes first. */
+/** `Effects.parallel` on threads; results are in the order of the inputs, whoever finishes first. Begins with `onDone(0)`. */
 export function parallelTasks(options: ParallelOptions): Effects['parallel'] {
   return async <T extends TaskName>(
     task: T,
@@ -37,6 +37,7 @@ export function parallelTasks(options: ParallelOptions): Effects['parallel'] {
     seconds: number,
     onDone: (finished: number) => void,
   ) => {
+    onDone(0);
     const threads = Math.min(options.workers, inputs.length);
     if (threads < 2 || seconds < worthWorkers) return inThisThread(task, inputs, options.signal, onDone);
     const script = options.script ?? new URL('./worker.js', import.meta.url);

@@ -32,6 +32,13 @@ function expectFault(ended: Ended, code: number, message: RegExp): void {
   expect(ended.code).toBe(code);
 }
 
+/** A folder that an earlier run might have left. @returns what is in it. */
+function putOldOutput(): Map<string, string> {
+  place.put('returnfall-out/run.json', '{"schema":"returnfall/run/1"}');
+  place.put('returnfall-out/products/alpha.html', 'old');
+  return contentsOf(place.path('returnfall-out'));
+}
+
 describe('input that cannot be used', () => {
   const cases: [string, () => void, number, RegExp][] = [
     ['a missing file', () => {}, 3, /^returnfall: gone\.csv: missing file; /m],
@@ -72,8 +79,7 @@ describe('input that cannot be used', () => {
   });
 
   it('more rejected rows than allowed: output stays, rejects and account are kept beside it', async () => {
-    expect((await place.run(['run', ...month])).code).toBe(0);
-    const before = contentsOf(place.path('returnfall-out'));
+    const before = putOldOutput();
     place.put(
       'r.csv',
       `${returnsCsv()}Alpha,2025-01,31.02.2026,1\n`.repeat(1) + 'Alpha,2025-01,soon,1\n'.repeat(40),
@@ -197,8 +203,7 @@ describe('a signal in the middle', () => {
     ['SIGINT', 130],
     ['SIGTERM', 143],
   ] as const)('%s: partial folder gone, old output as it was, exit %i', async (signal, code) => {
-    expect((await place.run(['run', ...month])).code).toBe(0);
-    const before = contentsOf(place.path('returnfall-out'));
+    const before = putOldOutput();
     const words = ['run', ...month, '--draws', '100000', '--out', 'returnfall-out'];
     const ended = await place.run(words, { interrupt: signal });
     expect(ended.code).toBe(code);

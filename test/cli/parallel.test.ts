@@ -17,7 +17,7 @@ describe('work in threads', () => {
   it('returns results in the order of the inputs, whoever finishes first', async () => {
     const { result, done } = run('slow-first', [1, 2, 3, 4, 5]);
     expect(await result).toEqual([10, 20, 30, 40, 50]);
-    expect(done).toEqual([1, 2, 3, 4, 5]);
+    expect(done).toEqual([0, 1, 2, 3, 4, 5]);
   });
 
   it('rejects when a thread ends, throws or reports a fault, even while the others hang', async () => {

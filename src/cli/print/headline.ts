@@ -10,7 +10,7 @@ export function headlineText(document: ForecastDocument): string {
   const { total, products } = document;
   const names =
     total.productsIncluded.length === 1 ? '1 product' : `${total.productsIncluded.length} products`;
-  const lines = headlines(total).map(({ label, count }) => {
+  const lines = headlines(document, total).map(({ label, count }) => {
     const intervals = document.levels.map((level) => `${levelText(level)}: ${intervalText(count, level)}`);
     return [`  ${label}`, countText(count.expected), `(${intervals.join('; ')})`];
   });
@@ -22,25 +22,30 @@ export function headlineText(document: ForecastDocument): string {
 /** One row a product, with the widest interval asked for. */
 function byProduct(document: ForecastDocument): string[] {
   const level = document.levels.at(-1) ?? 0.95;
-  const labels = headlines(document.total).map(({ label }) => label);
+  const labels = headlines(document, document.total).map(({ label }) => label);
   const head = ['by product', ...labels.flatMap((label) => [label, levelText(level)])];
   const rows = document.products.map((product) => [
     shorten(nameOf(product), 24),
     ...(product.notForecast === null
-      ? headlines(product).flatMap(({ count }) => [countText(count.expected), intervalText(count, level)])
+      ? headlines(document, product).flatMap(({ count }) => [
+          countText(count.expected),
+          intervalText(count, level),
+        ])
       : ['not forecast']),
   ]);
   return alignColumns([head, ...rows], ['left', ...head.slice(1).map(() => 'right' as const)]);
 }
 
-function headlines(block: Block): { label: string; count: PredictedCount }[] {
+function headlines({ asOf }: ForecastDocument, block: Block): { label: string; count: PredictedCount }[] {
+  // Without a calendar the periods are steps of use, counted from one.
+  const name = (period: string) => (asOf === null ? `step ${period}` : period);
   const next = block.periods.find((period) => !period.partial);
   const last = block.periods.at(-1);
   return [
-    ...(next === undefined ? [] : [{ label: next.period, count: next }]),
+    ...(next === undefined ? [] : [{ label: name(next.period), count: next }]),
     ...(last === undefined || last === next
       ? []
-      : [{ label: `through ${last.period}`, count: last.cumulative }]),
+      : [{ label: `through ${name(last.period)}`, count: last.cumulative }]),
     ...(block.untilWarrantyEnds === null
       ? []
       : [{ label: 'until warranty ends', count: block.untilWarrantyEnds }]),
