@@ -30,6 +30,7 @@ export function curvesChart(id: string, fit: FitProduct, ageUnit: string | null)
     points: fit.nonparametric.map((point) => pointMark(point, place, unit)),
     unit,
     warranty: warrantyMark(fit, place),
+    radius: fit.nonparametric.length > 60 ? 1.75 : 3,
     pointRows: pointRows(fit, place),
     curveTable: curveTable(fit, place),
     legend: legend(fit, chosen, others),

@@ -9,14 +9,15 @@ import { countText, noNumber, tickText } from './numbers.js';
 /** Shades beyond the empty one. */
 const shades = 6;
 
-/** View of partials/heat-map.hbs; null when the table is empty. */
-export function heatMap(full: NevadaTable) {
+/** View of partials/heat-map.hbs; null when the table is empty. @param noun what its period is called. */
+export function heatMap(full: NevadaTable, noun: string) {
   const { table, grouping } = coarserTable(full);
   if (table.rows.length === 0 || table.periods.length === 0) return null;
   const shadeOf = shading(table);
   const withdrawn = table.rows.some((row) => row.withdrawn.some((units) => units > 0));
   return {
     grouping,
+    period: grouping ?? noun,
     withdrawn,
     years: spans(table.periods.map((label) => periodParts(label).year ?? '')),
     columns: table.periods.map((label) => periodParts(label).short),

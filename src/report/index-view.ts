@@ -20,7 +20,7 @@ export function indexView(input: ReportInput, products: readonly ProductParts[],
     singleFile,
     total: input.forecast === null ? null : totalView(input, input.forecast.total),
     glance: glance(input, products),
-    missing: products.filter((parts) => parts.missing !== null),
+    missing: missingByReason(products),
     products: sections,
     severalProducts: products.length > 1,
     findings: input.table.findings,
@@ -42,6 +42,18 @@ export function pageFrame(input: ReportInput) {
     firstLevel: percentText(levels[0] ?? null),
     seed: String(input.settings.seed),
   };
+}
+
+/** Products without a forecast, those with the same reason together. */
+function missingByReason(products: readonly ProductParts[]) {
+  const groups = new Map<string, { code: string; message: string; names: string[] }>();
+  for (const { name, missing } of products) {
+    if (missing === null) continue;
+    const group = groups.get(missing.message) ?? { ...missing, names: [] };
+    group.names.push(name);
+    groups.set(missing.message, group);
+  }
+  return [...groups.values()].map(({ names, ...reason }) => ({ ...reason, names: names.join(', ') }));
 }
 
 function totalView(input: ReportInput, total: ForecastTotal) {

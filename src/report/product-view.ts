@@ -51,17 +51,18 @@ export function productSummary(input: ReportInput, parts: ProductParts) {
 /** Everything of a product's page. */
 export function productDetail(input: ReportInput, parts: ProductParts) {
   const { fit, forecast, table } = parts;
+  const words = periodWords(input);
   const calendar = input.table.asOf !== null;
   return {
     ...productSummary(input, parts),
-    heatMap: table.table === null ? null : heatMap(table.table),
+    heatMap: table.table === null ? null : heatMap(table.table, words.noun),
     ages: ageRows(parts),
     ageUnit: input.table.ageUnit,
     curves:
       fit === null ? null : curvesChart(`curves-${parts.slug}`, fit, calendar ? null : input.table.ageUnit),
     candidates: fit === null ? [] : candidateRows(fit, forecast?.byCandidate ?? [], input.table.ageUnit),
     untilWarranty: (forecast?.byCandidate ?? []).some((candidate) => candidate.untilWarrantyEnds !== null),
-    horizonWords: horizonWords(input, periodWords(input)),
+    horizonWords: horizonWords(input, words, forecast),
     findings: distinct([...(fit?.findings ?? []), ...(forecast?.findings ?? []), ...rejectedFinding(parts)]),
     entries: productEntries(table, rulesOf(input.settings, table.product), input.table.ageUnit),
     method: forecast?.method ?? null,
@@ -82,9 +83,13 @@ function horizonCost({ periods, currency }: ForecastProduct) {
   return [{ currency, expectedCost: costs.reduce<number>((sum, cost) => sum + (cost ?? 0), 0) }];
 }
 
-function horizonWords(input: ReportInput, words: PeriodWords) {
+/** Headings of the candidates' own returns; their first period may be the rest of one. */
+function horizonWords(input: ReportInput, words: PeriodWords, forecast: ForecastProduct | null) {
   const { horizon } = input.forecast ?? input.settings;
-  return { next: `next ${words.noun}`, horizon: `next ${horizon} ${words.noun}${horizon === 1 ? '' : 's'}` };
+  const first = forecast?.periods[0];
+  const whole = `next ${horizon} ${words.noun}${horizon === 1 ? '' : 's'}`;
+  if (first === undefined || !first.partial) return { next: `next ${words.noun}`, horizon: whole };
+  return { next: words.name(first.period, true), horizon: `with the ${whole}` };
 }
 
 function ageRows({ table }: ProductParts) {

@@ -186,11 +186,41 @@ describe('what is missing is said', () => {
     );
   });
 
+  it('renders a product without a single return', () => {
+    const [brook] = fixtureProducts as [(typeof fixtureProducts)[number]];
+    const none = reportInput([{ ...brook, scale: 1e12, planned: 0 }]);
+    const text = page('index.html', renderReport(none, templates, { singleFile: true }));
+    expect(text).toContain('Expect 0.0 returns in November 2026, between 0 and 0');
+    expect(text).not.toMatch(/NaN|Infinity/);
+  });
+
   it('renders what earlier stages left', () => {
     const tableOnly: ReportInput = { ...input, fit: null, forecast: null };
     const text = page('index.html', renderReport(tableOnly, templates, { singleFile: true }));
     expect(text).toContain('Nothing has been forecast yet');
     expect(text).toContain('<table class="heat">');
+  });
+
+  it('tells the rest of a period from the whole ones', () => {
+    const cut = (product: ForecastDocument['products'][number]) => ({
+      ...product,
+      periods: product.periods.map((period, i) => ({ ...period, partial: i === 0 })),
+    });
+    const partial = { ...forecast, products: forecast.products.map(cut), total: { ...forecast.total } };
+    const rest = renderReport({ ...input, forecast: partial }, templates, { singleFile: false });
+    const text = page(`products/${slugOf('Brook 40', null)}.html`, rest);
+    expect(text).toContain('returns in December 2026, between');
+    expect(text).toContain('over the 11 months to 31 October 2027');
+    expect(text).toContain('in the rest of November 2026 expect');
+    expect(text).toContain('<th scope="row">rest of November 2026</th>');
+  });
+
+  it('sums a long table to quarters, keeping every unit', () => {
+    const long = reportInput([{ ...(fixtureProducts[0] as (typeof fixtureProducts)[number]), months: 60 }]);
+    const rows = tableRows(page('index.html', renderReport(long, templates, { singleFile: true })), 'heat');
+    expect(rows).toHaveLength(21);
+    const survivors = rows.reduce((sum, row) => sum + Number(row.at(-1)?.replace(',', '')), 0);
+    expect(survivors).toBe(long.table.products[0]?.survivors);
   });
 
   it('renders ages without a calendar', () => {
