@@ -1,0 +1,87 @@
+import { describe, expect, it } from 'vitest';
+import type { ForecastDocument } from '../../src/records.js';
+import { slugOf } from '../../src/report/names.js';
+import { type ReportInput, renderReport } from '../../src/report/report.js';
+import { tableRows } from '../support/html.js';
+import { agesInput, reportInput } from '../support/report-input.js';
+import { fixtureProducts } from '../support/report-products.js';
+import { readTemplates } from '../support/templates.js';
+
+const templates = readTemplates();
+const input = reportInput();
+const forecast = input.forecast as ForecastDocument;
+const pages = renderReport(input, templates, { singleFile: false });
+
+function page(name: string, from = pages): string {
+  return from.get(name) ?? '';
+}
+
+function productPage(product: string): string {
+  return page(`products/${slugOf(product, null)}.html`);
+}
+
+describe('what is missing is said', () => {
+  it('names products that are not forecast, with the reason', () => {
+    const notice = /<section class="notice".*?<\/section>/s.exec(page('index.html'))?.[0] ?? '';
+    expect(notice).toContain(
+      '<strong>Well 9</strong>: no returns in the records; lend a shape or wait for returns',
+    );
+    expect(productPage('Well 9')).toContain('No forecast: no returns in the records');
+  });
+
+  it('renders a run in which nothing could be forecast', () => {
+    const none = reportInput(fixtureProducts.filter((p) => p.missing));
+    expect(page('index.html', renderReport(none, templates, { singleFile: true }))).toContain(
+      'No product could be forecast.',
+    );
+  });
+
+  it('renders a product without a single return', () => {
+    const [brook] = fixtureProducts as [(typeof fixtureProducts)[number]];
+    const none = reportInput([{ ...brook, scale: 1e12, planned: 0 }]);
+    const text = page('index.html', renderReport(none, templates, { singleFile: true }));
+    expect(text).toContain('Expect 0.0 returns in November 2026, between 0 and 0');
+    expect(text).not.toMatch(/NaN|Infinity/);
+  });
+
+  it('renders what earlier stages left', () => {
+    const tableOnly: ReportInput = { ...input, fit: null, forecast: null };
+    const text = page('index.html', renderReport(tableOnly, templates, { singleFile: true }));
+    expect(text).toContain('Nothing has been forecast yet');
+    expect(text).toContain('<table class="heat">');
+  });
+
+  it('tells the rest of a period from the whole ones', () => {
+    const cut = (product: ForecastDocument['products'][number]) => ({
+      ...product,
+      periods: product.periods.map((period, i) => ({ ...period, partial: i === 0 })),
+    });
+    const partial = { ...forecast, products: forecast.products.map(cut), total: { ...forecast.total } };
+    const rest = renderReport({ ...input, forecast: partial }, templates, { singleFile: false });
+    const text = page(`products/${slugOf('Brook 40', null)}.html`, rest);
+    expect(text).toContain('returns in December 2026, between');
+    expect(text).toContain('over the 11 months to 31 October 2027');
+    expect(text).toContain('in the rest of November 2026 expect');
+    expect(text).toContain('<th scope="row">rest of November 2026</th>');
+  });
+
+  it('sums a long table to quarters, keeping every unit', () => {
+    const long = reportInput([{ ...(fixtureProducts[0] as (typeof fixtureProducts)[number]), months: 60 }]);
+    const rows = tableRows(page('index.html', renderReport(long, templates, { singleFile: true })), 'heat');
+    expect(rows).toHaveLength(21);
+    const survivors = rows.reduce((sum, row) => sum + Number(row.at(-1)?.replace(',', '')), 0);
+    expect(survivors).toBe(long.table.products[0]?.survivors);
+  });
+
+  it('renders ages without a calendar', () => {
+    const text = page('index.html', renderReport(agesInput(), templates, { singleFile: true }));
+    expect(text).toContain('in the next 500 hours of use, between');
+    expect(text).toContain('<th scope="row">500 to 1,000 hours</th>');
+    expect(text).not.toMatch(/as of|November|Until warranty ends/);
+  });
+
+  it('refuses templates that lack a part', () => {
+    const { 'style.css': _, ...rest } = templates;
+    expect(() => renderReport(input, rest, { singleFile: true })).toThrow('missing template style.css');
+  });
+});
