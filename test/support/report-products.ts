@@ -14,7 +14,7 @@ export interface FixtureProduct {
   readonly missing: boolean;
 }
 
-/** A name of 120 characters that would break a careless page. */
+/** A long name that would break a careless page. */
 export const hostileName = `<script>alert("x")</script> & 'quoted' {{braces}} <img src=x onerror="alert(1)"> ${'pump '.repeat(9)}`;
 
 /** What most of them have in common. */
