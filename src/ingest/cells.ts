@@ -91,12 +91,17 @@ export function badQuantity(tally: FileTally, row: Row, field: string, text: str
 export function refOf(tally: FileTally, row: Row): RowRef {
   const at = (field: string) => tally.columns?.at(field) ?? -1;
   const product = textAt(row, at('product'));
-  const quantity = wholeNumber(textAt(row, at('quantity'))) ?? 1;
   return {
     tally,
     line: row.line,
     text: shownRow(row.cells),
     product: product === '' ? null : product,
-    quantity,
+    quantity: unitsIn(tally, row),
   };
+}
+
+/** Units that a row stands for, as far as they can be read. */
+function unitsIn({ columns, unitsAt }: FileTally, row: Row): number {
+  if (unitsAt === null) return wholeNumber(textAt(row, columns?.at('quantity') ?? -1)) ?? 1;
+  return unitsAt.reduce((sum, at) => sum + Math.max(0, wholeNumber(textAt(row, at)) ?? 0), 0);
 }

@@ -1,5 +1,5 @@
 import type { Config } from '../config.js';
-import type { Cohort, Progress, Source } from '../records.js';
+import type { Cohort, Finding, Progress, Source } from '../records.js';
 import {
   badQuantity,
   dateOf,
@@ -22,6 +22,7 @@ import { type FileTally, newTally, rejectRow, setAsideRow } from './tally.js';
 export interface Plans {
   readonly plans: ReadonlyMap<string, readonly Cohort[]>;
   readonly tallies: readonly FileTally[];
+  readonly findings: readonly Finding[];
 }
 
 /**
@@ -36,6 +37,7 @@ export async function readPlans(
   progress: Progress,
 ): Promise<Plans> {
   const plans = new Map<string, Cohort[]>();
+  let rests = 0;
   const tallies = sources.map((source) => newTally(source, 'plan'));
   const readDate = dateReader(config.plan.dateFormat);
   for (const tally of tallies) {
@@ -44,7 +46,8 @@ export async function readPlans(
       return (cells: string[], line: number) => {
         const planned = readPlanned(tally, { cells, line }, cutoff, fleet, readDate);
         if (planned === null) return;
-        const { product, cohort } = planned;
+        const { product, cohort, isRest } = planned;
+        if (isRest) rests++;
         if (!plans.get(product)?.push(cohort)) plans.set(product, [cohort]);
       };
     };
@@ -55,7 +58,13 @@ export async function readPlans(
       await byteProgress(tally, progress),
     );
   }
-  return { plans: new Map([...plans].map(([product, cohorts]) => [product, merged(cohorts)])), tallies };
+  const sorted = [...plans].map(([product, cohorts]) => [product, merged(cohorts)] as const);
+  return { plans: new Map(sorted), tallies, findings: restFindings(rests) };
+}
+
+function restFindings(rests: number): Finding[] {
+  const message = `${rests} planned rows are of a period that the as-of date cuts; their quantity is taken as still to be shipped`;
+  return rests === 0 ? [] : [{ code: 'plan-of-cut-period', severity: 'note', message }];
 }
 
 /** Cohorts sorted, those of equal days as one. */
@@ -77,7 +86,7 @@ function readPlanned(
   cutoff: number,
   fleet: Fleet,
   readDate: DateReader,
-): { product: string; cohort: Cohort } | null {
+): { product: string; cohort: Cohort; isRest: boolean } | null {
   if (!isWellFormed(tally, row)) return null;
   const at = (field: string) => tally.columns?.at(field) ?? -1;
   const product = productAt(tally, row, at('product'));
@@ -103,5 +112,6 @@ function readPlanned(
     );
     return null;
   }
-  return { product, cohort: { from: Math.max(period.from, cutoff), to: period.to, shipped } };
+  const cohort = { from: Math.max(period.from, cutoff), to: period.to, shipped };
+  return { product, cohort, isRest: period.from < cutoff };
 }

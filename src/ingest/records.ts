@@ -32,12 +32,12 @@ export async function readRecords(config: Config, sources: Sources, progress: Pr
   }
   const shipmentFiles = tallies('shipments');
   const fleet = await readFleet(config, shipmentFiles, cutoff, departures, progress);
-  checkUnits(fleet, departures);
+  checkUnits(fleet, departures, leavingFiles);
   if (config.asOf === null) throw missingAsOf(config.period, datesOf(fleet, departures));
   const claims = claimsByProduct(departures, fleet, config.period);
   const plan = await readPlans(config, sources.plan, cutoff, fleet, progress);
   const products = assemble(config, { fleet, claims, plans: plan.plans, returnsFiles: leavingFiles }, cutoff);
-  return { products, tallies: [...shipmentFiles, ...leavingFiles, ...plan.tallies], findings: [] };
+  return { products, tallies: [...shipmentFiles, ...leavingFiles, ...plan.tallies], findings: plan.findings };
 }
 
 async function readFleet(
@@ -70,14 +70,17 @@ function keepLeaving(departures: Departures, leaving: Leaving): void {
 }
 
 /** @throws UserError exit 3 when returns name units alone and no shipment names any. */
-function checkUnits(fleet: Fleet, departures: Departures): void {
-  if (fleet.unitRows > 0) return;
-  for (const row of leavingsIn(departures)) {
-    if (row.product !== null && row.shipped !== null) continue;
-    const message = 'invalid rows: they name only a unit, and the shipments do not name units';
-    const remedy = 'give shipments by unit, or product and ship_date in these rows';
-    throw new UserError({ code: 'units-not-shipped', file: row.tally.source.name, message, remedy }, 3);
+function checkUnits(fleet: Fleet, departures: Departures, files: readonly FileTally[]): void {
+  if (fleet.unitRows > 0 || fleet.products.size === 0) return;
+  const alone = new Set<FileTally>();
+  for (const { product, shipped, tally } of leavingsIn(departures)) {
+    if (product === null || shipped === null) alone.add(tally);
   }
+  const first = files.find((tally) => alone.has(tally));
+  if (first === undefined) return;
+  const message = 'invalid rows: they name only a unit, and the shipments do not name units';
+  const remedy = 'give shipments by unit, or product and ship_date in these rows';
+  throw new UserError({ code: 'units-not-shipped', file: first.source.name, message, remedy }, 3);
 }
 
 function* datesOf(fleet: Fleet, departures: Departures): Generator<DatedQuantity> {

@@ -35,7 +35,11 @@ export async function readTables(config: Config, sources: Sources, progress: Pro
   return {
     products,
     tallies: [...table.tallies, ...withdrawn.tallies, ...plan.tallies],
-    findings: [...lateCells([...cohorts, ...left], cutoff), ...outOfBounds(claims, products)],
+    findings: [
+      ...plan.findings,
+      ...lateCells([...cohorts, ...left], cutoff),
+      ...outOfBounds(claims, products),
+    ],
   };
 }
 

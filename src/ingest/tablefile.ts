@@ -31,6 +31,7 @@ export async function readCohortRows(
     const begin = (header: string[]) => {
       const found = periodColumns(findColumns(role, tally.source.name, header, input), read);
       tally.columns = found.columns;
+      tally.unitsAt = found.periods.map(({ at }) => at);
       if (found.periods.length === 0) throw noPeriods(tally.source, found.columns.header);
       return (cells: string[], line: number) => {
         const row = readCohortRow(tally, { cells, line }, found.periods, read);

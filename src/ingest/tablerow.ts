@@ -63,29 +63,23 @@ export function readCohortRow(
   const cells: { when: Dated; quantity: number }[] = [];
   for (const column of periods) {
     const quantity = wholeNumber(textAt(row, column.at) === '' ? '0' : textAt(row, column.at));
-    if (quantity === null || quantity < 0) return badCell(tally, row, periods, column);
-    if (quantity > 0 && column.when.to <= shippedIn.from) return tooEarly(tally, row, periods, column);
+    if (quantity === null || quantity < 0) return badCell(tally, row, column);
+    if (quantity > 0 && column.when.to <= shippedIn.from) return tooEarly(tally, row, column);
     if (quantity > 0) cells.push({ when: column.when, quantity });
   }
-  return { ...cohortRef(tally, row, periods), product, shippedIn, shipped, cells };
+  return { ...refOf(tally, row), product, shippedIn, shipped, cells };
 }
 
 const wholeOrZero = 'it must be a whole number, 0 or above';
 
-function badCell(tally: FileTally, row: Row, periods: readonly PeriodColumn[], { at }: PeriodColumn): null {
+function badCell(tally: FileTally, row: Row, { at }: PeriodColumn): null {
   const message = `invalid ${tally.columns?.header[at]} ${textAt(row, at)}: ${wholeOrZero}`;
-  rejectRow(cohortRef(tally, row, periods), 'bad-quantity', null, message);
+  rejectRow(refOf(tally, row), 'bad-quantity', null, message);
   return null;
 }
 
-function tooEarly(tally: FileTally, row: Row, periods: readonly PeriodColumn[], { at }: PeriodColumn): null {
+function tooEarly(tally: FileTally, row: Row, { at }: PeriodColumn): null {
   const message = `${textAt(row, at)} units in ${tally.columns?.header[at]}, before the shipment`;
-  rejectRow(cohortRef(tally, row, periods), 'return-before-shipment', null, message);
+  rejectRow(refOf(tally, row), 'return-before-shipment', null, message);
   return null;
-}
-
-/** The row for its account; it stands for the units in its cells, as far as they can be read. */
-function cohortRef(tally: FileTally, row: Row, periods: readonly PeriodColumn[]): RowRef {
-  const quantity = periods.reduce((sum, { at }) => sum + Math.max(0, wholeNumber(textAt(row, at)) ?? 0), 0);
-  return { ...refOf(tally, row), quantity };
 }

@@ -1,4 +1,5 @@
 import { rowText } from '../csv.js';
+import { UserError } from '../errors.js';
 import type { FileAccount, InputRole, RejectCode, RejectRow, SetAsideCode, Source } from '../records.js';
 import type { Columns } from './columns.js';
 
@@ -7,7 +8,10 @@ export interface FileTally {
   readonly source: Source;
   readonly role: InputRole;
   columns: Columns | null;
+  /** Positions of the cells that hold the units of a row; null when that is the column `quantity`. */
+  unitsAt: readonly number[] | null;
   read: number;
+  rejected: number;
   /** Size and SHA-256 of the file, null until they are asked for. */
   digest: Awaited<ReturnType<Source['digest']>> | null;
   readonly rejects: RejectRow[];
@@ -30,13 +34,31 @@ export interface RowRef {
 /** Longest cell that is read, in UTF-16 units. */
 export const longestCell = 1000;
 
+/** Rejected rows of a file that are kept; beyond them it is not read on. */
+export const mostRejected = 500_000;
+
 export function newTally(source: Source, role: InputRole): FileTally {
-  return { source, role, columns: null, read: 0, digest: null, rejects: [], rejectedUnits: new Map() };
+  return {
+    source,
+    role,
+    columns: null,
+    unitsAt: null,
+    read: 0,
+    rejected: 0,
+    digest: null,
+    rejects: [],
+    rejectedUnits: new Map(),
+  };
 }
 
-/** Puts a row among the rejected ones. @param field our name of the column at fault, null when it is the whole row. */
+/**
+ * Puts a row among the rejected ones.
+ * @param field our name of the column at fault, null when it is the whole row.
+ * @throws UserError exit 3 when too many rows of the file are rejected to keep them all.
+ */
 export function rejectRow(row: RowRef, code: RejectCode, field: string | null, message: string): void {
   keep(row, 'rejected', code, field, message);
+  if (++row.tally.rejected > mostRejected) throw hopeless(row, message);
   if (row.product === null || row.quantity <= 0) return;
   const { rejectedUnits } = row.tally;
   rejectedUnits.set(row.product, (rejectedUnits.get(row.product) ?? 0) + row.quantity);
@@ -55,7 +77,7 @@ export function shownRow(cells: readonly string[]): string {
 /** The account: every row read is used, rejected or set aside. */
 export async function fileAccount(tally: FileTally): Promise<FileAccount> {
   const { bytes, sha256 } = tally.digest ?? (await tally.source.digest());
-  const rejected = tally.rejects.filter((row) => row.kind === 'rejected').length;
+  const { rejected } = tally;
   const setAside = tally.rejects.length - rejected;
   return {
     file: tally.source.name,
@@ -81,6 +103,12 @@ function keep(
   const at = field === null ? -1 : (tally.columns?.at(field) ?? -1);
   const column = tally.columns?.header[at] ?? '';
   tally.rejects.push({ file: tally.source.name, line, kind, code, column, message, row: text });
+}
+
+function hopeless({ tally, line }: RowRef, last: string): UserError {
+  const message = `invalid records: more than ${mostRejected} rows were rejected; one is: ${last}`;
+  const remedy = 'check the columns, the dateFormat and the encoding of the file';
+  return new UserError({ code: 'too-many-rejected', file: tally.source.name, line, message, remedy }, 3);
 }
 
 function countCodes(rejects: readonly RejectRow[]): Record<string, number> {

@@ -1,0 +1,192 @@
+import { describe, expect, test } from 'vitest';
+import { UserError } from '../../src/errors.js';
+import { type Given, ingestText, inputWith, memorySource } from '../support/memory.js';
+
+const shipments = 'product,ship_date,quantity\nA,2026-01,10\n';
+const returns = 'product,ship_date,return_date,quantity\nA,2026-01,2026-02,1\n';
+const table = 'product,shipped_in,shipped,2026-01\nA,2026-01,10,1\n';
+const ages = 'product,outcome,age\nA,returned,5\n';
+
+async function faultOf(given: Given, changes: Parameters<typeof ingestText>[1] = {}): Promise<UserError> {
+  const error = await ingestText(given, changes).catch((thrown: unknown) => thrown);
+  if (!(error instanceof UserError)) throw new Error(`no fault for the reader: ${String(error)}`);
+  return error;
+}
+
+const codes = (error: UserError) => error.faults.map(({ code }) => code);
+
+describe('exit 3: files that cannot be used', () => {
+  test.each<[string, Given, string[]]>([
+    ['an empty file', { shipments: '', returns }, ['empty-file']],
+    ['a header only', { shipments, returns: 'unit,return_date\n' }, ['no-rows']],
+    [
+      'two headers for one field',
+      { shipments: 'model,item,ship_date,qty\nA,A,2026-01,1\n', returns },
+      ['doubled-header'],
+    ],
+    ['a missing column', { shipments: 'product,when,quantity\nA,2026-01,1\n', returns }, ['missing-column']],
+    [
+      'neither unit nor quantity',
+      { shipments: 'product,ship_date\nA,2026-01\n', returns },
+      ['missing-column'],
+    ],
+    [
+      'returns without an origin',
+      { shipments, returns: 'product,return_date\nA,2026-02\n' },
+      ['missing-column'],
+    ],
+    [
+      'a column not built yet',
+      { shipments: 'product,ship_date,quantity,In-Service Date\nA,2026-01,1,x\n', returns },
+      ['column-not-supported'],
+    ],
+    [
+      'another',
+      { shipments: 'product,ship_date,quantity,warranty_months\nA,2026-01,1,3\n', returns },
+      ['column-not-supported'],
+    ],
+    [
+      'every fault at once',
+      { shipments: 'model,item,warranty months\nA,A,3\n', returns },
+      ['doubled-header', 'missing-column', 'missing-column', 'column-not-supported'],
+    ],
+    [
+      'units against counted shipments',
+      { shipments, returns: 'unit,return_date\nu1,2026-02\nu2,2026-02\n' },
+      ['units-not-shipped'],
+    ],
+    [
+      'the name of totals as a product',
+      { shipments: `${shipments}(total),2026-01,1\n`, returns },
+      ['reserved-product'],
+    ],
+    ['weeks that meet months', { shipments: `${shipments}A,2026-W10,1\n`, returns }, ['mixed-ship-periods']],
+    ['a table without periods', { table: 'product,shipped_in,shipped\nA,2026-01,1\n' }, ['missing-column']],
+  ])('%s', async (_, given, expected) => {
+    const error = await faultOf(given);
+    expect(error.exitCode).toBe(3);
+    expect(codes(error)).toEqual(expected);
+  });
+
+  test('a missing column names the headers that were found and the setting that helps', async () => {
+    const error = await faultOf({ shipments: 'product,when,quantity\nA,2026-01,1\n', returns });
+    expect(error.faults[0]).toEqual({
+      code: 'missing-column',
+      file: 'shipments.csv',
+      line: 1,
+      message: 'missing column ship_date; the headers are product, when, quantity',
+      remedy: 'name the header that means ship_date in the setting columns: { "ship_date": "…" }',
+    });
+  });
+
+  test('a header that columns names must be there, and wins over a synonym', async () => {
+    const mapped = { shipments: inputWith({ columns: { product: 'type' } }) };
+    expect(codes(await faultOf({ shipments, returns }, mapped))).toEqual(['missing-column']);
+    const both = 'type,product,ship_date,quantity\nA,x,2026-01,10\n';
+    const intake = await ingestText({ shipments: both, returns }, mapped);
+    expect(intake.products.map(({ product }) => product)).toEqual(['A']);
+    expect(intake.files[0]?.unusedColumns).toEqual(['product']);
+  });
+
+  test('an as-of date before the first shipment keeps the account', async () => {
+    const error = await faultOf({ shipments, returns }, { asOf: '2025-12-31' });
+    expect([error.exitCode, codes(error)]).toEqual([3, ['as-of-before-first-shipment']]);
+    expect(error.intake?.files.map(({ setAside }) => setAside)).toEqual([1, 1]);
+  });
+
+  test('too many rejected rows keep the account and name codes, counts and an example', async () => {
+    const bad = `${returns}A,2026-01,soon,1\nA,2026-01,later,1\nB,2026-01,2026-02,1\n`;
+    const error = await faultOf({ shipments, returns: bad }, { maxRejectShare: 0.7 });
+    expect([error.exitCode, codes(error)]).toEqual([3, ['too-many-rejected']]);
+    expect(error.faults[0]?.message).toBe(
+      'invalid records: 3 of 4 rows were rejected (unknown-product 1, unreadable-date 2); the first is line 3: ' +
+        'invalid date soon: it cannot be read as ISO 8601 (2026-10-31, 2026-10); set dateFormat',
+    );
+    expect(error.intake?.rejects).toHaveLength(3);
+    expect((await ingestText({ shipments, returns: bad }, { maxRejectShare: 0.75 })).findings).toMatchObject([
+      { code: 'rows-rejected', severity: 'warning' },
+    ]);
+  });
+
+  test('a file with more than half a million bad rows is not read on', async () => {
+    const rows = 'A,soon,1\n'.repeat(500_001);
+    const error = await faultOf({ shipments: `product,ship_date,quantity\n${rows}`, returns });
+    expect([error.exitCode, codes(error), error.faults[0]?.line]).toEqual([
+      3,
+      ['too-many-rejected'],
+      500_002,
+    ]);
+  });
+
+  test('more than a quarter of a million repeated units are one fault', async () => {
+    const rows = Array.from({ length: 500_004 }, (_, i) => `u${i % 250_002},A,2026-01-05`);
+    const error = await faultOf({ shipments: `unit,product,ship_date\n${rows.join('\n')}`, returns });
+    expect([error.exitCode, codes(error)]).toEqual([3, ['too-many-duplicates']]);
+  });
+});
+
+describe('exit 2: settings and command line', () => {
+  test.each<[string, Given, string]>([
+    ['nothing', {}, 'missing-input'],
+    ['no returns', { shipments }, 'missing-input'],
+    ['no shipments', { returns }, 'missing-input'],
+    ['a table and records', { table, returns }, 'mixed-inputs'],
+    ['ages and a plan', { ages, plan: 'product,ship_period,quantity\nA,2026-11,1\n' }, 'mixed-inputs'],
+    ['withdrawals of no table', { 'table-withdrawn': table }, 'missing-input'],
+  ])('%s', async (_, given, code) => {
+    const error = await faultOf(given);
+    expect([error.exitCode, codes(error)]).toEqual([2, [code]]);
+  });
+
+  test('a field that columns does not know', async () => {
+    const error = await faultOf({ shipments, returns }, { returns: inputWith({ columns: { colour: 'x' } }) });
+    expect([error.exitCode, codes(error)]).toEqual([2, ['unknown-field']]);
+    expect(error.message).toContain('use one of return_date, unit, product, ship_date, quantity');
+  });
+});
+
+describe('without an as-of date', () => {
+  const days = (...dates: string[]) =>
+    `unit,product,ship_date\n${dates.map((date, i) => `u${i},A,${date}`).join('\n')}\n`;
+  test.each<[string, Given, string]>([
+    ['records by month end with their month', { shipments, returns }, '2026-02-28'],
+    [
+      'records that stop in the middle of a month',
+      { shipments: days('2026-01-05', '2026-03-17'), returns: 'unit,return_date\nu0,2026-03-20\n' },
+      '2026-02-28',
+    ],
+    [
+      'records to the last day',
+      { shipments: days('2026-01-05', '2026-03-31'), returns: 'unit,return_date\nu0,2026-03-20\n' },
+      '2026-03-31',
+    ],
+    [
+      'a stray date far ahead does not count',
+      {
+        shipments: days(...Array<string>(200).fill('2026-01-31')),
+        returns: 'unit,return_date\nu0,2062-01-31\n',
+      },
+      '2026-01-31',
+    ],
+    ['a table', { table: 'product,shipped_in,shipped,2026-01,2026-02\nA,2026-01,10,1,1\n' }, '2026-02-28'],
+  ])('%s', async (_, given, proposed) => {
+    const error = await faultOf(given, { asOf: null });
+    expect([error.exitCode, codes(error)]).toEqual([2, ['missing-as-of']]);
+    expect(error.faults[0]?.remedy).toContain(`set asOf to ${proposed}`);
+  });
+});
+
+test('empty files of withdrawals and plan, and one of several of returns, are notes', async () => {
+  const several = [memorySource('r1.csv', returns), memorySource('r2.csv', 'unit,return_date\n')];
+  const { findings } = await ingestText({
+    shipments,
+    returns: several,
+    withdrawals: 'unit,date\n',
+    plan: 'product,ship_period,quantity\n',
+  });
+  expect(findings.map(({ code, message }) => `${code} ${message}`)).toEqual([
+    'no-rows r2.csv has a header and no rows',
+    'no-rows withdrawals.csv has a header and no rows',
+    'no-rows plan.csv has a header and no rows',
+  ]);
+});
