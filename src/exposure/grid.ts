@@ -22,15 +22,15 @@ export interface AgeGrid {
 }
 
 /**
- * `fit` keeps cell probabilities above 1e-30 to 1e-9 relative, shapes up to 25; `draw` to about 1e-5, enough for a refit to
- * randomly weighted data.
+ * `fit` keeps cell probabilities above 1e-30 to 1e-9 relative, shapes up to 25; `draw` to about 1e-3, and most
+ * of that alike for all ages: enough for a refit to randomly weighted data.
  */
 export type Precision = 'fit' | 'draw';
 
 /** Longest ratio of the ends of a piece, the shape it is made for, its tolerance, and the step of the rule at age 0. */
 const precisions = {
   fit: { ratio: 1.15, shape: 60, tolerance: 1e-14, step: 1 / 9 },
-  draw: { ratio: 1.6, shape: 10, tolerance: 1e-6, step: 1 / 4 },
+  draw: { ratio: 1.6, shape: 4, tolerance: 1e-3, step: 1 / 4 },
 };
 
 /** The grid with the given knots; those at or below the delay are dropped and the delay itself is the first. */
@@ -95,7 +95,7 @@ function nodesFor(range: number, tolerance: number): number {
   for (let n = 1; n < 24; n++) {
     const factor = (4 * n ** 4) / ((2 * n) ** 3 * (2 * n - 1) ** 3);
     term *= factor * ((2 * n - 1) / (2 * n + 1)) * (range / 2) ** 2 * (n === 1 ? 2 : 1);
-    if (n >= 2 && term < tolerance) return n;
+    if (term < tolerance) return n;
   }
   return 24;
 }

@@ -32,32 +32,22 @@ export function integralsOn(grid: AgeGrid, k: number, curved: boolean): Integral
   const below = new Float64Array((intervals + 1) * size);
   const above = new Float64Array((intervals + 1) * size);
   const jet = new Float64Array(Math.max(size, 16));
+  const add = k === 2 ? addNodesOfTwo : addNodes;
   const evaluate = (jets: Jets) => {
     left.fill(0);
     right.fill(0);
     middle.fill(0);
     for (let i = 0; i < intervals; i++) {
+      add(grid, i, jets, jet, k, left, right, middle);
       const at = i * size;
-      for (let n = grid.firstNode[i] as number; n < (grid.firstNode[i + 1] as number); n++) {
-        jets.logDensity(grid.age[n] as number, grid.logAge[n] as number, jet);
-        unlog(jet, k);
-        addScaled(left, at, jet, grid.left[n] as number, size);
-        addScaled(right, at, jet, grid.right[n] as number, size);
-        if (curved) addScaled(middle, at, jet, grid.middle[n] as number, size);
-      }
-      for (let j = 0; j < size; j++) {
-        below[at + size + j] =
-          (below[at + j] as number) + (left[at + j] as number) + (right[at + j] as number);
+      for (let j = at; j < at + size; j++) {
+        below[j + size] = (below[j] as number) + (left[j] as number) + (right[j] as number);
       }
     }
     tail(grid, jets, jet, k);
     above.set(jet.subarray(0, size), intervals * size);
-    for (let i = intervals - 1; i >= 0; i--) {
-      const at = i * size;
-      for (let j = 0; j < size; j++) {
-        above[at + j] =
-          (above[at + size + j] as number) + (left[at + j] as number) + (right[at + j] as number);
-      }
+    for (let j = intervals * size - 1; j >= 0; j--) {
+      above[j] = (above[j + size] as number) + (left[j] as number) + (right[j] as number);
     }
   };
   return { size, left, right, middle, below, above, evaluate };
@@ -106,17 +96,72 @@ function addRow(
   sign: number,
   out: Float64Array,
 ): void {
-  const size = integrals.size;
-  const l = sign * (windows.left[row] as number);
-  const r = sign * (windows.right[row] as number);
-  const m = sign * (windows.middle[row] as number);
+  const { size, left, right, middle } = integrals;
+  const l = sign * windows.left[row]!;
+  const r = sign * windows.right[row]!;
+  const m = sign * windows.middle[row]!;
   const at = interval * size;
-  for (let j = 0; j < size; j++) {
-    out[j] =
-      (out[j] as number) + l * (integrals.left[at + j] as number) + r * (integrals.right[at + j] as number);
-  }
+  for (let j = 0; j < size; j++) out[j] = out[j]! + l * left[at + j]! + r * right[at + j]!;
   if (m === 0) return;
-  for (let j = 0; j < size; j++) out[j] = (out[j] as number) + m * (integrals.middle[at + j] as number);
+  for (let j = 0; j < size; j++) out[j] = out[j]! + m * middle[at + j]!;
+}
+
+/** Adds every node of interval i to its integrals. */
+function addNodes(
+  grid: AgeGrid,
+  i: number,
+  jets: Jets,
+  jet: Float64Array,
+  k: number,
+  left: Float64Array,
+  right: Float64Array,
+  middle: Float64Array,
+): void {
+  const size = jetSize(k);
+  const at = i * size;
+  for (let n = grid.firstNode[i] as number; n < (grid.firstNode[i + 1] as number); n++) {
+    jets.logDensity(grid.age[n] as number, grid.logAge[n] as number, jet);
+    unlog(jet, k);
+    addScaled(left, at, jet, grid.left[n] as number, size);
+    addScaled(right, at, jet, grid.right[n] as number, size);
+    if (middle.length > 0) addScaled(middle, at, jet, grid.middle[n] as number, size);
+  }
+}
+
+/** The same for two coordinates, written out: almost all time of a fit is spent here. */
+function addNodesOfTwo(
+  grid: AgeGrid,
+  i: number,
+  jets: Jets,
+  jet: Float64Array,
+  _k: number,
+  left: Float64Array,
+  right: Float64Array,
+  middle: Float64Array,
+): void {
+  const at = i * 6;
+  const curved = middle.length > 0;
+  const last = grid.firstNode[i + 1] as number;
+  for (let n = grid.firstNode[i] as number; n < last; n++) {
+    jets.logDensity(grid.age[n] as number, grid.logAge[n] as number, jet);
+    const f = Math.exp(jet[0]!);
+    const a = jet[1]!;
+    const b = jet[2]!;
+    jet[0] = f;
+    jet[1] = f * a;
+    jet[2] = f * b;
+    jet[3] = f * (jet[3]! + a * a);
+    jet[4] = f * (jet[4]! + a * b);
+    jet[5] = f * (jet[5]! + b * b);
+    const l = grid.left[n]!;
+    const r = grid.right[n]!;
+    for (let j = 0; j < 6; j++) {
+      const value = jet[j]!;
+      left[at + j] = left[at + j]! + l * value;
+      right[at + j] = right[at + j]! + r * value;
+    }
+    if (curved) addScaled(middle, at, jet, grid.middle[n]!, 6);
+  }
 }
 
 /** Turns a jet of log f into the jet of f. */

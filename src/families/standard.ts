@@ -53,10 +53,11 @@ export const logistic: Standard = {
     return tail === 'upper' ? -odds : odds;
   },
   densityJet: (z, out) => {
-    const p = 1 / (1 + Math.exp(-z));
-    out[0] = z - 2 * softplus(z);
-    out[1] = 1 - 2 * p;
-    out[2] = -2 * p * (1 - p);
+    const e = Math.exp(-Math.abs(z));
+    const q = e / (1 + e);
+    out[0] = -Math.abs(z) - 2 * Math.log(1 + e);
+    out[1] = z > 0 ? 2 * q - 1 : 1 - 2 * q;
+    out[2] = -2 * q * (1 - q);
   },
   survivalJet: (z, out) => {
     const p = 1 / (1 + Math.exp(-z));

@@ -16,6 +16,8 @@ export interface LogLikelihood extends Surface {
    * resolves; a likelihood that rises to there has no maximum worth the name.
    */
   readonly inside: (point: Float64Array) => boolean;
+  /** The gradient of the log of each term for one unit: k numbers a term. */
+  readonly scores: (point: Float64Array) => Float64Array;
 }
 
 /**
@@ -28,60 +30,62 @@ export function logLikelihood(terms: Terms, laid: LaidTerms, family: Family): Lo
   const gradient = new Float64Array(k);
   const hessian = new Float64Array(k * k);
   const integrals = integralsOn(laid.grid, k, laid.returned.curved || laid.kept.curved);
-  const block = new Float64Array(Math.max(16, jetSize(k)));
-  const other = new Float64Array(block.length);
-  const add = (units: number) => addLog(block, units, k, gradient, hessian);
-  const windows = (laidOut: LaidWindows, first: number, wanted: 'inside' | 'outside') => {
-    let sum = 0;
-    for (let w = 0; w < laidOut.count; w++) {
-      windowProbability(laidOut, w, integrals, wanted, block);
-      sum += add(counts[first + w] as number);
+  const jet = new Float64Array(Math.max(16, jetSize(k)));
+  const other = new Float64Array(jet.length);
+  const eachWindow = (windows: LaidWindows, first: number, wanted: 'inside' | 'outside', visit: Visit) => {
+    for (let w = 0; w < windows.count; w++) {
+      windowProbability(windows, w, integrals, wanted, jet);
+      takeLog(jet, k);
+      visit(first + w, jet);
     }
-    return sum;
+  };
+  const eachTerm = (point: Float64Array, visit: Visit) => {
+    const jets = family.jetsAt(point);
+    const first = laid.returned.count + laid.kept.count;
+    if (first > 0) {
+      integrals.evaluate(jets);
+      eachWindow(laid.returned, 0, 'inside', visit);
+      eachWindow(laid.kept, laid.returned.count, 'outside', visit);
+    }
+    for (let a = 0; a < terms.aged.length; a++) {
+      agedTerm(terms.aged[a] as AgeGroup, jets, k, jet, other);
+      visit(first + a, jet);
+    }
+  };
+  let value = 0;
+  const add: Visit = (term) => {
+    value += addJet(jet, counts[term] as number, k, gradient, hessian);
   };
   const evaluate = (point: Float64Array): number => {
+    value = 0;
     gradient.fill(0);
     hessian.fill(0);
-    const jets = family.jetsAt(point);
-    let value = 0;
-    if (laid.returned.count + laid.kept.count > 0) {
-      integrals.evaluate(jets);
-      value += windows(laid.returned, 0, 'inside');
-      value += windows(laid.kept, laid.returned.count, 'outside');
-    }
-    const first = laid.returned.count + laid.kept.count;
-    for (let a = 0; a < terms.aged.length; a++) {
-      agedTerm(terms.aged[a] as AgeGroup, jets, k, block, other);
-      value += addJet(block, counts[first + a] as number, k, gradient, hessian);
-    }
+    eachTerm(point, add);
     mirror(hessian, k);
     return value;
   };
+  const scores = (point: Float64Array): Float64Array => {
+    const all = new Float64Array(counts.length * k);
+    eachTerm(point, (term) => all.set(jet.subarray(1, 1 + k), term * k));
+    return all;
+  };
   const inside = (point: Float64Array) =>
     family.spread(point) > narrowest && point.every((x) => Math.abs(x) <= 80);
-  return { size: k, gradient, hessian, counts, inside, evaluate };
+  return { size: k, gradient, hessian, counts, inside, evaluate, scores };
 }
 
-/** Adds units · log P for a block holding P and its derivatives; returns the value's part. */
-function addLog(
-  block: Float64Array,
-  units: number,
-  k: number,
-  gradient: Float64Array,
-  hessian: Float64Array,
-): number {
-  const p = block[0] as number;
-  const scaled = units / p;
+/** Is shown every term with the jet of the log of its probability. */
+type Visit = (term: number, jet: Float64Array) => void;
+
+/** Turns the jet of a probability into the jet of its log. */
+function takeLog(jet: Float64Array, k: number): void {
+  const inverse = 1 / jet[0]!;
+  for (let i = 1; i <= k; i++) jet[i] = jet[i]! * inverse;
   let second = 1 + k;
-  for (let i = 0; i < k; i++) {
-    const first = block[1 + i] as number;
-    gradient[i] = (gradient[i] as number) + scaled * first;
-    for (let j = i; j < k; j++, second++) {
-      const bent = (block[second] as number) - (first * (block[1 + j] as number)) / p;
-      hessian[i * k + j] = (hessian[i * k + j] as number) + scaled * bent;
-    }
+  for (let i = 1; i <= k; i++) {
+    for (let j = i; j <= k; j++, second++) jet[second] = jet[second]! * inverse - jet[i]! * jet[j]!;
   }
-  return units * Math.log(p);
+  jet[0] = Math.log(jet[0]!);
 }
 
 /** Adds units times a jet that is a log already. */

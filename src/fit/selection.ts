@@ -1,9 +1,8 @@
 import { familyNamed } from '../families/index.js';
 import type { CandidateFit } from '../records.js';
 import { aicc } from './choice.js';
-import { coarseTerms } from './coarse.js';
 import { randomWeights, refitter } from './draws.js';
-import { layTerms, type Terms } from './terms.js';
+import type { Terms } from './terms.js';
 
 /**
  * In which share of refits to randomly weighted data each candidate would have had the best AICc; null for those that
@@ -16,24 +15,23 @@ export function withChosenShares(
   refits: number,
   seed: readonly (string | number)[],
 ): CandidateFit[] {
-  const coarse = coarseTerms(terms);
-  const laid = layTerms(coarse, 'draw');
   const standing = candidates.filter((candidate) => candidate.ruledOut === null);
   const contests = standing.map((candidate) => {
     const family = familyNamed(candidate.family);
-    const start = family.free(family.parameterNames.map((name) => candidate.parameters[name] as number));
-    const refit = refitter(coarse, laid, family);
-    return (weights: Float64Array) => {
-      const value = refit(weights, start)?.value;
+    const best = family.free(family.parameterNames.map((name) => candidate.parameters[name] as number));
+    const { counts, refit } = refitter(terms, family, best);
+    const score = (weights: Float64Array) => {
+      const value = refit(weights)?.value;
       return value === undefined
         ? Infinity
         : (aicc(value, candidate.parameterCount, terms.returns) ?? Infinity);
     };
+    return { counts, score };
   });
   const wins = new Float64Array(standing.length);
   for (let b = 0; b < refits; b++) {
-    const weights = randomWeights(coarse.counts, [...seed, 'weights', b, 0]);
-    const scores = contests.map((contest) => contest(weights));
+    const weights = randomWeights(contests[0]?.counts ?? terms.counts, [...seed, 'weights', b, 0]);
+    const scores = contests.map((contest) => contest.score(weights));
     const winner = scores.indexOf(Math.min(...scores));
     wins[winner] = (wins[winner] as number) + 1;
   }

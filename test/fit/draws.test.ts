@@ -5,8 +5,10 @@ import { weibull } from '../../src/families/weibull.js';
 import { coarseTerms } from '../../src/fit/coarse.js';
 import { drawsForForecast } from '../../src/fit/drawn.js';
 import { parameterDraws, randomWeights, refitter } from '../../src/fit/draws.js';
+import { logLikelihood } from '../../src/fit/likelihood.js';
 import { fitProduct } from '../../src/fit/product.js';
 import { layTerms, termsOf } from '../../src/fit/terms.js';
+import { maximise } from '../../src/math/maximise.js';
 import { randomStream } from '../../src/math/random.js';
 import type { ParameterDraws } from '../../src/records.js';
 import { loadGrouped } from '../reference/load.js';
@@ -64,15 +66,19 @@ test('coarse terms keep the units, move the maximum by less than a hundredth of 
   const sum = (counts: Float64Array) => counts.reduce((total, n) => total + n, 0);
   expect(sum(coarse.counts)).toBeCloseTo(sum(terms.counts), 6);
   expect(coarse.kept.length).toBeLessThan(terms.kept.length / 3);
-  const fits = [terms, coarse].map((each) => {
-    const refit = refitter(each, layTerms(each, 'fit'), lognormal);
-    const centre = refit(each.counts, Float64Array.of(9, 0.5))?.point as Float64Array;
-    const draws = Array.from(
-      { length: 400 },
-      (_, b) => refit(randomWeights(each.counts, ['w', b]), centre)?.point[0],
-    );
-    return { centre, ...spread(draws as number[]) };
-  });
+  const likelihood = logLikelihood(terms, layTerms(terms, 'fit'), lognormal);
+  const exact = (weights: Float64Array) => {
+    likelihood.counts.set(weights);
+    return maximise(likelihood, Float64Array.of(9, 0.5), { inside: likelihood.inside }).point;
+  };
+  const best = exact(terms.counts);
+  const { centre, counts, refit } = refitter(terms, lognormal, best);
+  const locations = (each: Float64Array, solve: (weights: Float64Array) => Float64Array | undefined) =>
+    Array.from({ length: 400 }, (_, b) => solve(randomWeights(each, ['w', b]))?.[0] as number);
+  const fits = [
+    { centre: best, ...spread(locations(terms.counts, exact)) },
+    { centre, ...spread(locations(counts, (weights) => refit(weights)?.point)) },
+  ];
   const [fine, rough] = fits as [(typeof fits)[number], (typeof fits)[number]];
   expect(Math.abs((fine.centre[0] as number) - (rough.centre[0] as number))).toBeLessThan(
     0.01 * fine.deviation,
