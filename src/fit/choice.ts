@@ -36,7 +36,7 @@ export function criterion(candidate: CandidateFit): number {
 export function ruledOut(fitted: Fitted, d: number): NotForecast | null {
   const k = fitted.likelihood.size;
   if (d <= k + 1) {
-    const message = `${d} returns are too few for ${k} ${k === 1 ? 'parameter' : 'parameters'}, at least ${k + 2} are needed`;
+    const message = `${d} ${d === 1 ? 'return is' : 'returns are'} too few for ${k} ${k === 1 ? 'parameter' : 'parameters'}, at least ${k + 2} are needed`;
     return { code: 'too-few-returns', message };
   }
   if (fitted.maximum.converged) return null;

@@ -1,7 +1,8 @@
 import { type Config, cutOffOf, rulesOf } from '../config.js';
 import { familyNamed } from '../families/index.js';
-import type { CandidateFit, Curve, Finding, FitProduct, NotForecast, ProductRecords } from '../records.js';
+import type { CandidateFit, Curve, FitProduct, NotForecast, ProductRecords } from '../records.js';
 import { rankCandidates } from './choice.js';
+import { leavesEstimate, steepShape } from './findings.js';
 import { fitFamilies, typicalAges } from './maximum.js';
 import { nonparametricEstimate } from './nonparametric.js';
 import { withChosenShares } from './selection.js';
@@ -18,6 +19,7 @@ export function fitProduct(config: Config, records: ProductRecords): FitProduct 
   const oldestAge = oldestAgeOf(config, records);
   const candidates = terms.returns === 0 ? [] : fitCandidates(config, records, terms);
   const notForecast = reasonNot(records, terms, candidates);
+  const nonparametric = nonparametricEstimate(config, records);
   return {
     product: records.product,
     segment: records.segment,
@@ -30,9 +32,9 @@ export function fitProduct(config: Config, records: ProductRecords): FitProduct 
     warrantyDays: rules.warrantyDays,
     chosen: notForecast === null ? (candidates[0]?.family ?? null) : null,
     notForecast,
-    findings: findingsOf(candidates),
+    findings: [...steepShape(candidates), ...leavesEstimate(candidates[0], nonparametric, rules.delayDays)],
     candidates,
-    nonparametric: nonparametricEstimate(config, records),
+    nonparametric,
     curves: candidates
       .filter((candidate) => candidate.converged)
       .map((candidate) => curve(candidate, oldestAge, rules.delayDays)),
@@ -67,7 +69,7 @@ function reasonNot(
   return few
     ? {
         code: 'too-few-returns',
-        message: `only ${terms.returns} returns, too few for any candidate; wait for more or record similar products as one`,
+        message: `only ${terms.returns} ${terms.returns === 1 ? 'return' : 'returns'}, too few for any candidate; wait for more or record similar products as one`,
       }
     : { code: 'no-usable-fit', message: `every candidate is ruled out: ${reasons}` };
 }
@@ -90,15 +92,6 @@ function oldestAgeOf(config: Config, records: ProductRecords): number {
     return records.ages.reduce((oldest, group) => Math.max(oldest, group.to), 0);
   const first = records.cohorts[0];
   return first === undefined ? 0 : cutOffOf(config) - first.from;
-}
-
-function findingsOf(candidates: readonly CandidateFit[]): Finding[] {
-  const shape = candidates.find((candidate) => candidate.family === 'weibull')?.parameters.shape;
-  if (shape === undefined || shape <= 20) return [];
-  const message =
-    `the Weibull shape is ${shape.toFixed(1)}, above 20: look for a wrong time origin, mixed units or too few returns, ` +
-    'and prefer a normal or lognormal distribution (common practice)';
-  return [{ code: 'steep-shape', severity: 'warning', message }];
 }
 
 /** Share returned by age, from 0 to one and a half times the oldest age. */

@@ -119,3 +119,21 @@ test('a warranty limit censors: ages beyond it say no more than the limit itself
   );
   expect(beyond).toEqual(at);
 });
+
+test('a curve that does not follow the records says so, one that does keeps silent', () => {
+  const group = (age: number, quantity: number, outcome: AgeGroup['outcome'] = 'returned'): AgeGroup => ({
+    outcome,
+    from: age,
+    to: age,
+    exact: true,
+    quantity,
+  });
+  const ages = Array.from({ length: 20 }, (_, i) => 10 * (i + 1));
+  const settled = [...ages.map((age) => group(age, 15)), group(1000, 5000, 'surviving')];
+  const codes = (records: readonly AgeGroup[]) =>
+    fitProduct(configWith({ candidates: ['weibull'] }), agedProduct('S', records)).findings.map(
+      (f) => f.code,
+    );
+  expect(codes(settled)).toContain('curve-leaves-estimate');
+  expect(codes(agesOf('ballbearing'))).toEqual([]);
+});
