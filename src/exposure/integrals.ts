@@ -32,7 +32,7 @@ export function integralsOn(grid: AgeGrid, k: number, curved: boolean): Integral
   const below = new Float64Array((intervals + 1) * size);
   const above = new Float64Array((intervals + 1) * size);
   const jet = new Float64Array(Math.max(size, 16));
-  const add = k === 2 ? addNodesOfTwo : addNodes;
+  const add = k === 0 ? addNodesOfNone : k === 2 ? addNodesOfTwo : addNodes;
   const evaluate = (jets: Jets) => {
     left.fill(0);
     right.fill(0);
@@ -125,6 +125,26 @@ function addNodes(
     addScaled(left, at, jet, grid.left[n] as number, size);
     addScaled(right, at, jet, grid.right[n] as number, size);
     if (middle.length > 0) addScaled(middle, at, jet, grid.middle[n] as number, size);
+  }
+}
+
+/** The same without derivatives: a forecast evaluates thousands of distributions. */
+function addNodesOfNone(
+  grid: AgeGrid,
+  i: number,
+  jets: Jets,
+  jet: Float64Array,
+  _k: number,
+  left: Float64Array,
+  right: Float64Array,
+  middle: Float64Array,
+): void {
+  for (let n = grid.firstNode[i] as number; n < (grid.firstNode[i + 1] as number); n++) {
+    jets.logDensity(grid.age[n] as number, grid.logAge[n] as number, jet);
+    const f = Math.exp(jet[0]!);
+    left[i] = left[i]! + f * grid.left[n]!;
+    right[i] = right[i]! + f * grid.right[n]!;
+    if (middle.length > 0) middle[i] = middle[i]! + f * grid.middle[n]!;
   }
 }
 
