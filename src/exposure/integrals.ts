@@ -1,4 +1,4 @@
-import { type Jets, jetSize } from '../families/family.js';
+import { type Jet, type Jets, jetSize } from '../families/family.js';
 import type { AgeGrid } from './grid.js';
 import type { LaidWindows } from './window.js';
 
@@ -32,13 +32,14 @@ export function integralsOn(grid: AgeGrid, k: number, curved: boolean): Integral
   const below = new Float64Array((intervals + 1) * size);
   const above = new Float64Array((intervals + 1) * size);
   const jet = new Float64Array(Math.max(size, 16));
+  const sums = { grid, k, size, jet, left, right, middle };
   const add = k === 0 ? addNodesOfNone : k === 2 ? addNodesOfTwo : addNodes;
   const evaluate = (jets: Jets) => {
     left.fill(0);
     right.fill(0);
     middle.fill(0);
     for (let i = 0; i < intervals; i++) {
-      add(grid, i, jets, jet, k, left, right, middle);
+      add(sums, i, jets.logDensity);
       const at = i * size;
       for (let j = at; j < at + size; j++) {
         below[j + size] = (below[j] as number) + (left[j] as number) + (right[j] as number);
@@ -54,8 +55,8 @@ export function integralsOn(grid: AgeGrid, k: number, curved: boolean): Integral
 }
 
 /**
- * The probability that window w counts a return, with derivatives, into out; when it is above one half and `wanted` is
- * `outside`, the probability that it does not, summed from the other side. Returns true when out holds the outside.
+ * The probability that window w counts a return (`inside`), or that it does not (`outside`), with derivatives, into out. The
+ * outside is one minus the inside while that is below one half, and is summed from the other side when it is more.
  */
 export function windowProbability(
   windows: LaidWindows,
@@ -106,41 +107,32 @@ function addRow(
   for (let j = 0; j < size; j++) out[j] = out[j]! + m * middle[at + j]!;
 }
 
-/** Adds every node of interval i to its integrals. */
-function addNodes(
-  grid: AgeGrid,
-  i: number,
-  jets: Jets,
-  jet: Float64Array,
-  k: number,
-  left: Float64Array,
-  right: Float64Array,
-  middle: Float64Array,
-): void {
-  const size = jetSize(k);
+interface Sums {
+  readonly grid: AgeGrid;
+  readonly k: number;
+  readonly size: number;
+  readonly jet: Float64Array;
+  readonly left: Float64Array;
+  readonly right: Float64Array;
+  readonly middle: Float64Array;
+}
+
+/** Adds every node of interval i to its integrals: any number of coordinates, the readable form. */
+function addNodes({ grid, k, size, jet, left, right, middle }: Sums, i: number, logDensity: Jet): void {
   const at = i * size;
-  for (let n = grid.firstNode[i] as number; n < (grid.firstNode[i + 1] as number); n++) {
-    jets.logDensity(grid.age[n] as number, grid.logAge[n] as number, jet);
+  for (let n = grid.firstNode[i]!; n < grid.firstNode[i + 1]!; n++) {
+    logDensity(grid.age[n]!, grid.logAge[n]!, jet);
     unlog(jet, k);
-    addScaled(left, at, jet, grid.left[n] as number, size);
-    addScaled(right, at, jet, grid.right[n] as number, size);
-    if (middle.length > 0) addScaled(middle, at, jet, grid.middle[n] as number, size);
+    addScaled(left, at, jet, grid.left[n]!, size);
+    addScaled(right, at, jet, grid.right[n]!, size);
+    if (middle.length > 0) addScaled(middle, at, jet, grid.middle[n]!, size);
   }
 }
 
 /** The same without derivatives: a forecast evaluates thousands of distributions. */
-function addNodesOfNone(
-  grid: AgeGrid,
-  i: number,
-  jets: Jets,
-  jet: Float64Array,
-  _k: number,
-  left: Float64Array,
-  right: Float64Array,
-  middle: Float64Array,
-): void {
-  for (let n = grid.firstNode[i] as number; n < (grid.firstNode[i + 1] as number); n++) {
-    jets.logDensity(grid.age[n] as number, grid.logAge[n] as number, jet);
+function addNodesOfNone({ grid, jet, left, right, middle }: Sums, i: number, logDensity: Jet): void {
+  for (let n = grid.firstNode[i]!; n < grid.firstNode[i + 1]!; n++) {
+    logDensity(grid.age[n]!, grid.logAge[n]!, jet);
     const f = Math.exp(jet[0]!);
     left[i] = left[i]! + f * grid.left[n]!;
     right[i] = right[i]! + f * grid.right[n]!;
@@ -148,22 +140,11 @@ function addNodesOfNone(
   }
 }
 
-/** The same for two coordinates, written out: almost all time of a fit is spent here. */
-function addNodesOfTwo(
-  grid: AgeGrid,
-  i: number,
-  jets: Jets,
-  jet: Float64Array,
-  _k: number,
-  left: Float64Array,
-  right: Float64Array,
-  middle: Float64Array,
-): void {
+/** The same for two coordinates, written out: most of the time of a fit is spent here. */
+function addNodesOfTwo({ grid, jet, left, right, middle }: Sums, i: number, logDensity: Jet): void {
   const at = i * 6;
-  const curved = middle.length > 0;
-  const last = grid.firstNode[i + 1] as number;
-  for (let n = grid.firstNode[i] as number; n < last; n++) {
-    jets.logDensity(grid.age[n] as number, grid.logAge[n] as number, jet);
+  for (let n = grid.firstNode[i]!; n < grid.firstNode[i + 1]!; n++) {
+    logDensity(grid.age[n]!, grid.logAge[n]!, jet);
     const f = Math.exp(jet[0]!);
     const a = jet[1]!;
     const b = jet[2]!;
@@ -180,7 +161,7 @@ function addNodesOfTwo(
       left[at + j] = left[at + j]! + l * value;
       right[at + j] = right[at + j]! + r * value;
     }
-    if (curved) addScaled(middle, at, jet, grid.middle[n]!, 6);
+    if (middle.length > 0) addScaled(middle, at, jet, grid.middle[n]!, 6);
   }
 }
 
@@ -210,5 +191,5 @@ function tail(grid: AgeGrid, jets: Jets, jet: Float64Array, k: number): void {
 }
 
 function addScaled(to: Float64Array, at: number, jet: Float64Array, factor: number, size: number): void {
-  for (let j = 0; j < size; j++) to[at + j] = (to[at + j] as number) + factor * (jet[j] as number);
+  for (let j = 0; j < size; j++) to[at + j] = to[at + j]! + factor * jet[j]!;
 }

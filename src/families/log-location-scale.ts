@@ -1,4 +1,11 @@
-import type { Distribution, Jets, StartPoints } from './family.js';
+import {
+  type Distribution,
+  type Family,
+  type Jets,
+  requireFinite,
+  requirePositive,
+  type StartPoints,
+} from './family.js';
 
 /** A distribution on the whole line, standard form, with the derivatives that likelihoods need. */
 export interface Standard {
@@ -10,6 +17,26 @@ export interface Standard {
   readonly densityJet: (z: number, out: Float64Array) => void;
   /** Log survival with its first and second derivative by z, into out[0..2]. */
   readonly survivalJet: (z: number, out: Float64Array) => void;
+}
+
+/** The family log T = location + scale · Z, with the parameters location and scale of log age. */
+export function logLocationScaleFamily(name: string, standard: Standard): Family {
+  return {
+    name,
+    parameterNames: ['location', 'scale'],
+    logLocationScale: true,
+    spread: (free) => Math.exp(free[1] as number),
+    parameters: (free) => [free[0] as number, Math.exp(free[1] as number)],
+    free: ([location, scale]) =>
+      Float64Array.of(
+        requireFinite('location', location as number),
+        Math.log(requirePositive('scale', scale as number)),
+      ),
+    slopes: (free) => [1, Math.exp(free[1] as number)],
+    at: (free) => logLocationScale(standard, free[0] as number, Math.exp(free[1] as number)),
+    jetsAt: (free) => logLocationScaleJets(standard, free[0] as number, free[1] as number),
+    start: (near) => startOnLine(standard, near),
+  };
 }
 
 /** log T = location + scale · Z for a standard Z. @param scale above 0. */

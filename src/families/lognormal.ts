@@ -1,21 +1,5 @@
 /** Lognormal: F(t) = Φ((log t − location) / scale); location and scale are of log age. */
-import { type Family, requireFinite, requirePositive } from './family.js';
-import { logLocationScale, logLocationScaleJets, startOnLine } from './log-location-scale.js';
+import { logLocationScaleFamily } from './log-location-scale.js';
 import { normal } from './standard.js';
 
-export const lognormal: Family = {
-  name: 'lognormal',
-  parameterNames: ['location', 'scale'],
-  logLocationScale: true,
-  spread: (free) => Math.exp(free[1] as number),
-  parameters: (free) => [free[0] as number, Math.exp(free[1] as number)],
-  free: ([location, scale]) =>
-    Float64Array.of(
-      requireFinite('location', location as number),
-      Math.log(requirePositive('scale', scale as number)),
-    ),
-  slopes: (free) => [1, Math.exp(free[1] as number)],
-  at: (free) => logLocationScale(normal, free[0] as number, Math.exp(free[1] as number)),
-  jetsAt: (free) => logLocationScaleJets(normal, free[0] as number, free[1] as number),
-  start: (near) => startOnLine(normal, near),
-};
+export const lognormal = logLocationScaleFamily('lognormal', normal);

@@ -1,13 +1,11 @@
 /** Weibull: S(t) = exp(−(t / scale)^shape); scale is the characteristic life. log T is location + scale · smallest extreme value. */
 import { type Family, requirePositive } from './family.js';
-import { logLocationScale, logLocationScaleJets, startOnLine } from './log-location-scale.js';
+import { logLocationScaleFamily } from './log-location-scale.js';
 import { smallestExtremeValue } from './standard.js';
 
 export const weibull: Family = {
-  name: 'weibull',
+  ...logLocationScaleFamily('weibull', smallestExtremeValue),
   parameterNames: ['scale', 'shape'],
-  logLocationScale: true,
-  spread: (free) => Math.exp(free[1] as number),
   parameters: (free) => [Math.exp(free[0] as number), Math.exp(-(free[1] as number))],
   free: ([scale, shape]) =>
     Float64Array.of(
@@ -15,7 +13,4 @@ export const weibull: Family = {
       -Math.log(requirePositive('shape', shape as number)),
     ),
   slopes: (free) => [Math.exp(free[0] as number), -Math.exp(-(free[1] as number))],
-  at: (free) => logLocationScale(smallestExtremeValue, free[0] as number, Math.exp(free[1] as number)),
-  jetsAt: (free) => logLocationScaleJets(smallestExtremeValue, free[0] as number, free[1] as number),
-  start: (near) => startOnLine(smallestExtremeValue, near),
 };
