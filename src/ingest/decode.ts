@@ -1,5 +1,4 @@
 import { isUtf8 } from 'node:buffer';
-import { TextDecoder } from 'node:util';
 import { UserError } from '../errors.js';
 import type { Source } from '../records.js';
 
@@ -106,7 +105,7 @@ function decodeText(source: Source, label: string): Decoder {
   };
 }
 
-function textDecoder(label: string): TextDecoder {
+function textDecoder(label: string): InstanceType<typeof TextDecoder> {
   try {
     return new TextDecoder(label, { fatal: true });
   } catch {
