@@ -28,7 +28,7 @@ test.each(['left', 'right', 'middle', 'below', 'above'] as const)('%s', (which) 
   none?.evaluate(jets);
   two?.evaluate(jets);
   three?.evaluate(padded);
-  const count = (none?.[which].length as number) / 1;
+  const count = none?.[which].length as number;
   expect(count).toBeGreaterThan(4);
   for (let i = 0; i < count; i++) {
     expect(none?.[which][i]).toBeCloseTo(three?.[which][10 * i] as number, 14);
