@@ -5,10 +5,15 @@ import type { Source } from '../records.js';
 /**
  * The bytes of a source as UTF-8 without a byte-order mark. A byte-order mark (UTF-8, UTF-16) decides the encoding; without
  * one it is `encoding`, a WHATWG label, and UTF-8 where that is null.
+ * @param onBytes is told the length of each piece as it is read.
  * @throws UserError exit 2 for an unknown label, exit 3 for bytes that the encoding does not allow.
  */
-export async function* utf8Bytes(source: Source, encoding: string | null): AsyncGenerator<Buffer> {
-  const chunks = source.open()[Symbol.asyncIterator]();
+export async function* utf8Bytes(
+  source: Source,
+  encoding: string | null,
+  onBytes: (bytes: number) => void = () => {},
+): AsyncGenerator<Buffer> {
+  const chunks = counted(source.open(), onBytes);
   let head: Buffer = Buffer.alloc(0);
   let ended = false;
   while (head.length < 3 && !ended) {
@@ -26,6 +31,16 @@ export async function* utf8Bytes(source: Source, encoding: string | null): Async
     else yield decode.chunk(asBuffer(next.value), 0);
   }
   yield decode.end();
+}
+
+async function* counted(
+  chunks: AsyncIterable<Uint8Array>,
+  onBytes: (bytes: number) => void,
+): AsyncGenerator<Uint8Array> {
+  for await (const chunk of chunks) {
+    onBytes(chunk.length);
+    yield chunk;
+  }
 }
 
 interface Decoder {

@@ -15,7 +15,7 @@ export const longestRow = 1 << 20;
  * Reads a CSV file (RFC 4180) row by row: separator comma, semicolon or tab, whichever the header line holds most of
  * outside quotes; LF, CRLF or CR; quoted fields may hold line breaks. Blank lines, and rows whose cells are all empty, are no rows.
  * @param begin takes the header and returns what takes the rows.
- * @param onBytes is told the length of each piece that is behind us.
+ * @param onBytes is told the length of each piece of the file as it is read.
  * @returns the number of rows below the header.
  * @throws UserError exit 3 for a file without a header, an unclosed quote or invalid text, and what the handlers throw.
  */
@@ -27,8 +27,7 @@ export async function readRows(
 ): Promise<number> {
   let parser: RowParser | null = null;
   let held: Buffer = Buffer.alloc(0);
-  for await (const bytes of utf8Bytes(source, encoding)) {
-    onBytes(bytes.length);
+  for await (const bytes of utf8Bytes(source, encoding, onBytes)) {
     if (parser !== null) {
       parser.write(bytes);
       if (parser.errored !== null) break;

@@ -185,10 +185,10 @@ test('the account has name, role, size and digest of every file in the order of 
   ]);
 });
 
-test('progress ends at the size of each file', async () => {
+test('progress ends at the size of each file, byte-order mark and all', async () => {
   const last = new Map<string, string>();
   const sources = sourcesOf({
-    shipments: 'product,ship_date,quantity\nA,2026-01,5\n',
+    shipments: '\ufeffproduct,ship_date,quantity\nA,2026-01,5\n',
     returns: 'product,ship_date,return_date\nA,2026-01,2026-02\n',
   });
   await ingest(configWith({ asOf: '2026-10-31' }), sources, (step, done, total) =>
@@ -196,6 +196,6 @@ test('progress ends at the size of each file', async () => {
   );
   expect(Object.fromEntries(last)).toEqual({
     'reading returns.csv': '48 of 48',
-    'reading shipments.csv': '39 of 39',
+    'reading shipments.csv': '42 of 42',
   });
 });
