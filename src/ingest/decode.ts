@@ -14,23 +14,21 @@ export async function* utf8Bytes(
   onBytes: (bytes: number) => void = () => {},
 ): AsyncGenerator<Buffer> {
   const chunks = counted(source.open(), onBytes);
-  let head: Buffer = Buffer.alloc(0);
-  let ended = false;
-  while (head.length < 3 && !ended) {
-    const next = await chunks.next();
-    if (next.done) ended = true;
-    else head = Buffer.concat([head, next.value]);
+  try {
+    let head: Buffer = Buffer.alloc(0);
+    let next = await chunks.next();
+    for (; !next.done && head.length < 3; next = await chunks.next())
+      head = Buffer.concat([head, next.value]);
+    const mark = byteOrderMark(head);
+    const skipped = mark?.length ?? 0;
+    const label = mark?.label ?? encoding;
+    const decode = label === null ? passUtf8(source) : decodeText(source, label);
+    yield decode.chunk(head.subarray(skipped), skipped);
+    for (; !next.done; next = await chunks.next()) yield decode.chunk(asBuffer(next.value), 0);
+    yield decode.end();
+  } finally {
+    await chunks.return(undefined);
   }
-  const mark = byteOrderMark(head);
-  const label = mark?.label ?? encoding;
-  const decode = label === null ? passUtf8(source) : decodeText(source, label);
-  yield decode.chunk(head.subarray(mark?.length ?? 0), mark?.length ?? 0);
-  while (!ended) {
-    const next = await chunks.next();
-    if (next.done) ended = true;
-    else yield decode.chunk(asBuffer(next.value), 0);
-  }
-  yield decode.end();
 }
 
 async function* counted(

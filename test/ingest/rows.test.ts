@@ -137,3 +137,24 @@ test('what a handler throws comes through', async () => {
   });
   await expect(read).rejects.toThrow('from the handler');
 });
+
+test.each(['throws', 'stops at a quote that never closes'])(
+  'the file is closed when reading %s',
+  async (how) => {
+    let closed = false;
+    async function* open(): AsyncGenerator<Uint8Array> {
+      try {
+        yield Buffer.from('a,b\n1,2\n"');
+        for (;;) yield Buffer.alloc(65536, 'x');
+      } finally {
+        closed = true;
+      }
+    }
+    const source = { ...memorySource('a.csv', ''), open };
+    const read = readRows(source, null, () => () => {
+      if (how === 'throws') throw new RangeError('from the handler');
+    });
+    await expect(read).rejects.toThrow();
+    expect(closed).toBe(true);
+  },
+);
