@@ -23,7 +23,7 @@ export function missingProducts(result: MonthEnd): readonly Missing[] {
 
 /** `not forecast: HV-200: …`, one line a product. */
 export function missingText(missing: readonly Missing[]): string {
-  return missing.map(({ name, reason }) => `not forecast: ${name}: ${reason.message}`).join('\n');
+  return missing.map(({ name, reason }) => `not forecast: ${name}: ${reason.message}\n`).join('');
 }
 
 interface Judged {

@@ -4,7 +4,6 @@ import { familyNamed } from '../families/index.js';
 import type {
   CandidateFit,
   CandidateForecast,
-  Finding,
   FitProduct,
   ForecastMethod,
   ForecastPeriod,
@@ -18,6 +17,7 @@ import { exposedCohorts } from './cohorts.js';
 import { type Column, firstAndLast, forecastColumns } from './columns.js';
 import { type PredictiveCounts, predictiveCounts } from './counts.js';
 import { type Expectation, type Exposed, expectation } from './exposed.js';
+import { choiceFinding, plugInFinding } from './findings.js';
 import { historyOf } from './history.js';
 import { columnOf, cumulative, cumulativeColumns, predictedCount, quantileProbabilities } from './summary.js';
 
@@ -74,7 +74,11 @@ export function forecastProduct(
     untilWarrantyEnds: exact.limited ? untilWarrantyEnds(config, plugIn, predicted) : null,
     history: historyOf(config, records, { family, free: best }),
     ifRejectedWereReal: ifRejectedWereReal(records, fit, periods),
-    findings: [...draws.findings, ...plugInFinding(periods)],
+    findings: [
+      ...draws.findings,
+      ...plugInFinding(periods),
+      ...choiceFinding(config, shared.byCandidate, family.name, periods),
+    ],
   };
   return { product, counts: { counts: predicted.counts, columns: predicted.columns } };
 }
@@ -178,14 +182,4 @@ function ifRejectedWereReal(
   return horizon === undefined || fit.returns === 0
     ? null
     : (horizon * records.rejectedReturns) / fit.returns;
-}
-
-function plugInFinding(periods: readonly ForecastPeriod[]): Finding[] {
-  const last = periods.at(-1)?.cumulative;
-  if (last === undefined || Math.abs(last.expected - last.plugIn) <= 0.05 * last.plugIn) return [];
-  const percent = Math.round(100 * (last.expected / last.plugIn - 1));
-  const message =
-    `the mean over the uncertainty of the parameters is ${percent} % ${percent < 0 ? 'below' : 'above'} the forecast at their best values, ` +
-    'because few returns leave the parameters wide open';
-  return [{ code: 'mean-differs-from-plug-in', severity: 'note', message: message.replace('-', '') }];
 }

@@ -127,3 +127,26 @@ test('quantile p is the smallest y with G(y) ≥ p', () => {
   const { quantiles } = predictedCount(0, 0, Float64Array.of(4, 1, 3, 2, 5), [0.2, 0.21, 0.5, 0.8, 0.99]);
   expect(quantiles).toEqual({ '0.2': 1, '0.21': 2, '0.5': 3, '0.8': 4, '0.99': 5 });
 });
+
+test('candidates of weight outside the interval are a warning; a narrow choice is not', () => {
+  const everything = { candidates: ['weibull', 'lognormal'], horizon: 20 };
+  const { product } = forecast(cages, { ...everything, levels: [0.1] });
+  const finding = product.findings.find((f) => f.code === 'choice-outside-interval');
+  expect(finding?.severity).toBe('warning');
+  expect(finding?.message).toMatch(
+    /^the interval takes the weibull distribution as right; .*with 46 % of the weight.*lognormal \d+/,
+  );
+  const wide = forecast(cages, { ...everything, levels: [0.99] }).product;
+  expect(wide.findings.map((f) => f.code)).not.toContain('choice-outside-interval');
+});
+
+test('a mean that differs from the plug-in figure by more than a twentieth is noted', () => {
+  const { product } = forecast(cages, { horizon: 8 });
+  const last = product.periods.at(-1)?.cumulative as { expected: number; plugIn: number };
+  const percent = Math.round(100 * (last.expected / last.plugIn - 1));
+  expect(Math.abs(percent)).toBeGreaterThan(5);
+  const finding = product.findings.find((f) => f.code === 'mean-differs-from-plug-in');
+  expect(finding?.message).toContain(
+    `is ${Math.abs(percent)} % ${percent < 0 ? 'below' : 'above'} the forecast`,
+  );
+});
