@@ -30,7 +30,10 @@ export function inputComplaints(said: Said): Complaint[] {
       'ages',
       given.filter((input) => input !== 'ages'),
     ),
-    ...clashes('ages', said.asOf === undefined ? [] : ['asOf']),
+    ...clashes(
+      'ages',
+      (['asOf', 'period'] as const).filter((key) => said[key] !== undefined),
+    ),
     ...clashes(
       'table',
       has('ages') ? [] : given.filter((i) => ['shipments', 'returns', 'withdrawals'].includes(i)),

@@ -8,7 +8,7 @@ import { inputComplaints, inputKeys, layOver, type Said } from './inputs.js';
 import { settingKeys } from './keys.js';
 import type { Path } from './path.js';
 import { type Rules, readProducts, type StatedProducts } from './products.js';
-import { layRules, rulesComplaints } from './rules.js';
+import { agesComplaints, layRules, rulesComplaints } from './rules.js';
 
 /**
  * The complete configuration of a run: the flags over the settings, every default filled in.
@@ -31,7 +31,10 @@ export function resolveConfig(settings: SettingsFile | null, flags: Flags): Conf
   const faults = [
     ...placed([...read.settings.complaints, ...read.products.complaints], settingsPlace(settings)),
     ...placed(read.flags.complaints, flagPlace),
-    ...placed([...togetherInputs(read, said), ...togetherRules(read, rules)], anyPlace(settings, read.flags)),
+    ...placed(
+      [...togetherInputs(read, said), ...togetherRules(read, rules), ...beside(read, said)],
+      anyPlace(settings, read.flags),
+    ),
   ];
   if (faults.length > 0) throw new UserError(inOrder(faults), exitCodes.unusableSettings);
   return completeConfig(said, rules.every, rules.named);
@@ -71,6 +74,14 @@ function togetherRules(read: Read, laid: Products): readonly Complaint[] {
     ...read.products.named.flatMap(({ product, rules }, i) =>
       faulty.has(product) ? [] : rulesComplaints(product, rules, laid.named[i]?.rules ?? {}),
     ),
+  ];
+}
+
+function beside(read: Read, said: Said): readonly Complaint[] {
+  if ((said.ages?.files?.length ?? 0) === 0) return [];
+  return [
+    ...agesComplaints('*', { ...read.products.every, ...read.flags.rules }),
+    ...read.products.named.flatMap(({ product, rules }) => agesComplaints(product, rules)),
   ];
 }
 

@@ -2,9 +2,14 @@ import { type Complaint, invalid } from './check.js';
 import { pathText } from './path.js';
 import type { Rules } from './products.js';
 
-/** Rules laid over each other key by key, the later over the earlier, the flags over all. */
+/**
+ * Rules laid over each other key by key, the later over the earlier, the flags over all. A warranty given by flag is the
+ * whole warranty: one in days takes back the settings' months, and the other way round.
+ */
 export function layRules(layers: readonly Rules[], flags: Rules): Rules {
-  const settings: Rules = Object.assign({}, ...layers);
+  const { warrantyMonths, warrantyDays, ...others }: Rules = Object.assign({}, ...layers);
+  const byFlag = flags.warrantyMonths !== undefined || flags.warrantyDays !== undefined;
+  const settings: Rules = byFlag ? others : Object.assign({}, ...layers);
   const sameDelay = flags.delayDays === undefined || flags.delayDays === (settings.delayDays ?? 0);
   const reason = sameDelay ? {} : { delayReason: 'given on the command line, by --delay-days' };
   return { ...settings, ...flags, ...reason };
@@ -41,4 +46,13 @@ export function rulesComplaints(product: string, said: Rules, laid: Rules): Comp
     complaints.push(invalid(path('delayDays'), delay, 'less than the warranty lasts'));
   }
   return complaints;
+}
+
+/** With ages there are no calendar months; what `said` says of them is refused. */
+export function agesComplaints(product: string, said: Rules): Complaint[] {
+  if (said.warrantyMonths === undefined || said.warrantyMonths === null) return [];
+  const path = ['products', product, 'warrantyMonths'];
+  const message = `invalid ${pathText(path)}, not allowed beside ages`;
+  const remedy = 'use warrantyDays, which is in the unit of the ages';
+  return [{ code: 'conflicting-input', message, remedy, path, at: 'key' }];
 }

@@ -45,13 +45,12 @@ describe('resolveConfig', () => {
 
   test('reads every key', () => {
     const config = resolve(`{
-      "title": "Fans", "period": "week", "horizon": 6, "levels": [0.955, 0.5], "draws": 200, "seed": 0,
+      "title": "Fans", "horizon": 6, "levels": [0.955, 0.5], "draws": 200, "seed": 0,
       "candidates": ["gamma", "weibull"], "maxRejectShare": 0,
       "ages": { "files": ["a.csv"], "columns": { "age": "hours" }, "encoding": "latin1" },
       "ageUnit": "h", "ageStep": 0.5 }`);
     expect(config).toMatchObject({
       title: 'Fans',
-      period: 'week',
       horizon: 6,
       levels: [0.5, 0.955],
       draws: 200,
@@ -146,6 +145,15 @@ describe('flags', () => {
       dateFormat: 'dd.MM.yyyy',
       encoding: null,
     });
+  });
+
+  test("of warranty in one unit take back the settings' other unit", () => {
+    const months = `{ "shipments": { "files": ["s.csv"] }, "products": { "*": { "warrantyMonths": 24 }, "B": { "warrantyDays": 500 } } }`;
+    expect(resolve(months).everyProduct).toMatchObject({ warrantyMonths: 24, warrantyDays: null });
+    expect(rulesOf(resolve(months), 'B')).toMatchObject({ warrantyMonths: 24, warrantyDays: 500 });
+    const config = resolve(months, { warrantyDays: '1500' });
+    expect(config.everyProduct).toMatchObject({ warrantyMonths: null, warrantyDays: 1500 });
+    expect(rulesOf(config, 'B')).toMatchObject({ warrantyMonths: null, warrantyDays: 1500 });
   });
 
   test('of warranty and delay hold for every product, with a reason that says so', () => {
