@@ -9,9 +9,9 @@ import {
   textAt,
   wholeNumber,
 } from './cells.js';
-import type { Columns } from './columns.js';
 import type { Dated } from './dated.js';
 import type { DateReader } from './dates.js';
+import type { PeriodColumn } from './tablehead.js';
 import { type FileTally, type RowRef, rejectRow } from './tally.js';
 
 /** A row of a Nevada-style table: one cohort and what left it by period. */
@@ -22,25 +22,6 @@ export interface CohortRow extends RowRef {
   readonly shipped: number;
   /** Cells above 0. */
   readonly cells: readonly { readonly when: Dated; readonly quantity: number }[];
-}
-
-/** A column of a Nevada-style table that is headed by a period. */
-export interface PeriodColumn {
-  readonly at: number;
-  readonly when: Dated;
-}
-
-/** The headers that are dates, and the columns without them. */
-export function periodColumns(
-  columns: Columns,
-  read: DateReader,
-): { periods: PeriodColumn[]; columns: Columns } {
-  const periods = columns.header.flatMap((name, at) => {
-    const when = columns.unused.includes(name) ? read(name) : null;
-    return when === null || 'code' in when ? [] : [{ at, when }];
-  });
-  const headers = new Set(periods.map(({ at }) => columns.header[at]));
-  return { periods, columns: { ...columns, unused: columns.unused.filter((name) => !headers.has(name)) } };
 }
 
 /** Reads a row; null when it is rejected. */

@@ -62,6 +62,11 @@ describe('exit 3: files that cannot be used', () => {
     ],
     ['weeks that meet months', { shipments: `${shipments}A,2026-W10,1\n`, returns }, ['mixed-ship-periods']],
     ['a table without periods', { table: 'product,shipped_in,shipped\nA,2026-01,1\n' }, ['missing-column']],
+    [
+      'a table with two columns of one period',
+      { table: 'product,shipped_in,shipped,2026-01, 2026-01\nA,2026-01,9,1,1\n' },
+      ['doubled-header'],
+    ],
   ])('%s', async (_, given, expected) => {
     const error = await faultOf(given);
     expect(error.exitCode).toBe(3);
@@ -77,6 +82,31 @@ describe('exit 3: files that cannot be used', () => {
       message: 'missing column ship_date; the headers are product, when, quantity',
       remedy: 'name the header that means ship_date in the setting columns: { "ship_date": "…" }',
     });
+  });
+
+  test('columns of a table that are no period and hold something are all named', async () => {
+    const header = 'product,shipped_in,shipped,2026-01,2025-2,spare,foo,';
+    const stray = await faultOf({ table: `${header}\nA,2026-01,10,1,0,, x ,\nA,2026-01,ten,,,,,7\n` });
+    expect(stray.exitCode).toBe(3);
+    const at = { code: 'unknown-column', file: 'table.csv', line: 1 };
+    expect(stray.faults).toMatchObject([
+      { ...at, message: 'invalid header 2025-2: it is no period, and the column holds something' },
+      { ...at, message: 'invalid header foo: it is no period, and the column holds something' },
+      { ...at, message: 'missing header of column 8: the column holds something' },
+    ]);
+    expect(stray.faults[0]?.remedy).toMatch(/^head the columns 2026-10, 2026-W45 or 2026-Q4/);
+    const beside = await faultOf({ table, 'table-withdrawn': `${header}\nA,2026-01,10,0,,3,,\n` });
+    expect(beside.faults).toMatchObject([{ code: 'unknown-column', file: 'table-withdrawn.csv' }]);
+    const empty = await ingestText({ table: `${header}\nA,2026-01,10,1,,,,\n` });
+    expect(empty.files[0]?.unusedColumns).toEqual(['2025-2', 'spare', 'foo']);
+  });
+
+  test('columns of a table that dateFormat cannot read are told by it', async () => {
+    const german = 'product,shipped_in,shipped,01.2026,2026-02\nA,01.2026,10,1,1\n';
+    const { faults } = await faultOf({ table: german }, { table: inputWith({ dateFormat: 'MM.yyyy' }) });
+    expect(faults).toMatchObject([
+      { code: 'unknown-column', remedy: 'head the columns as dateFormat MM.yyyy says' },
+    ]);
   });
 
   test('a header that columns names must be there, and wins over a synonym', async () => {

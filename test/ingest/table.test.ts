@@ -89,7 +89,7 @@ test('returns that the warranty forbids count as withdrawn, and a finding says s
 
 test('weekly and quarterly tables, a plan beside, and columns by other names', async () => {
   const weekly = await ingestText({
-    table: 'product;shipped in;Shipped;2026-W01;2026-W02;note\nA;2026-W01;5;1;1;x\n',
+    table: 'product;shipped in;Shipped;2026-W01;2026-W02;note\nA;2026-W01;5;1;1; \n',
   });
   expect(cells(weekly, 'returned')).toEqual(['A 2025-12-29 2025-12-29 1', 'A 2025-12-29 2026-01-05 1']);
   expect(weekly.files[0]?.unusedColumns).toEqual(['note']);
