@@ -59,7 +59,7 @@ function describeProgram(version: string, action: (command: CommandName, options
     .description(programHelp.description)
     .usage('COMMAND [options]')
     .version(version, '--version', 'print the version')
-    .helpOption('--help', 'print this help')
+    .helpOption('-h, --help', 'print this help')
     .helpCommand(false)
     .configureHelp({ helpWidth: 80 })
     .addHelpText('after', commandHelp(null));
@@ -68,7 +68,7 @@ function describeProgram(version: string, action: (command: CommandName, options
     for (const option of optionsOf(name)) command.addOption(option);
     command
       .version(version, '--version', 'print the version')
-      .helpOption('--help', 'print this help')
+      .helpOption('-h, --help', 'print this help')
       .addHelpText('after', commandHelp(name))
       .action((options: Options) => action(name, options));
   }

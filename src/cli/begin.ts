@@ -4,7 +4,7 @@ import type { MonthEnd } from '../records.js';
 import { type Flags, overrideStored } from '../settings.js';
 import type { Invocation } from './arguments.js';
 import { readEarlier } from './earlier.js';
-import { missingInput } from './failure.js';
+import { nothingToDo } from './failure.js';
 import { hasInput, loadSettings } from './settings-file.js';
 
 /** Where a command starts from: records to read, or what an earlier command left. */
@@ -24,7 +24,7 @@ export function begin(invocation: Invocation): Start {
   if (from !== null) return beginFrom(from, invocation);
   if (hasInput(settings, flags)) return { ...loadSettings(settings, flags), earlier: {}, finished: null };
   throw usage(
-    missingInput,
+    nothingToDo,
     `missing input: ${command} has neither settings nor records to read`,
     missingRemedy,
   );

@@ -8,7 +8,7 @@ import type { Invocation } from './arguments.js';
 import { begin, type Start } from './begin.js';
 import { deliver } from './deliver.js';
 import { type NodeEffects, nodeEffects } from './effects.js';
-import { openOutput, placeOf, writeRejected } from './output.js';
+import { openOutput, placeOf, repairOutput, writeRejected } from './output.js';
 import type { Scope } from './scope.js';
 import { mainDocument, resultText, summaryText } from './show.js';
 import { startStopwatch } from './stopwatch.js';
@@ -27,8 +27,9 @@ export interface Session {
 /** Runs a command from settings to the last printed line. @returns the exit code. @throws UserError */
 export async function runCommand(invocation: Invocation, session: Session): Promise<number> {
   const { terminal, scope, signal, version } = session;
-  const start = begin(invocation);
   const out = outOf(invocation);
+  if (out !== null) repairOutput(out);
+  const start = begin(invocation);
   const output = out === null ? null : openOutput(out, scope);
   const watch = startStopwatch(terminal.progress.show);
   const effects = nodeEffects({
@@ -99,5 +100,13 @@ function untilOf({ command }: Invocation, { config }: Start): Until {
 }
 
 function outOf({ command, out }: Invocation): string | null {
+  if (out === '') {
+    const fault = {
+      code: 'invalid-flag',
+      message: 'invalid --out, allowed the path of a folder',
+      column: '--out',
+    };
+    throw new UserError({ ...fault, remedy: 'name a folder, or leave it out' }, exitCodes.unusableSettings);
+  }
   return out ?? (command === 'run' || command === 'report' ? 'returnfall-out' : null);
 }

@@ -18,7 +18,7 @@ type Detail = {
 };
 
 /** Code of the fault beside which help is printed: a command without settings and without records. */
-export const missingInput = 'missing-input';
+export const nothingToDo = 'nothing-to-do';
 
 /** One line a fault; the stack only when `verbose`. Whatever is not a UserError is a fault of the program. */
 export function describeFailure(error: unknown, verbose: boolean): Failure {

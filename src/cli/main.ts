@@ -2,7 +2,7 @@
 import { readFileSync } from 'node:fs';
 import { exitCodes, UserError } from '../errors.js';
 import { helpText, type Invocation, parseArguments } from './arguments.js';
-import { describeFailure, missingInput } from './failure.js';
+import { describeFailure, nothingToDo } from './failure.js';
 import { openScope } from './scope.js';
 import { processTerminal } from './terminal.js';
 
@@ -52,7 +52,7 @@ async function runToEnd(invocation: Invocation, version: string): Promise<number
 
 function fail(error: unknown, words: readonly string[]): number {
   const failure = describeFailure(error, words.includes('--verbose'));
-  if (error instanceof UserError && error.faults[0]?.code === missingInput) {
+  if (error instanceof UserError && error.faults[0]?.code === nothingToDo) {
     process.stderr.write(`${helpText(words[0] ?? null)}\n`);
   }
   process.stderr.write(failure.text);
@@ -65,8 +65,9 @@ function readVersion(): string {
   return (JSON.parse(text) as { version: string }).version;
 }
 
-/** A reader such as `head` that closes the pipe has seen enough; that is no fault. */
+/** A reader such as `head` that closes the pipe has seen enough, which is no fault; a full disk is. */
 function endOfReader(error: NodeJS.ErrnoException): void {
-  if (error.code !== 'EPIPE') throw error;
-  process.exit();
+  if (error.code === 'EPIPE') process.exit();
+  process.stderr.write(`returnfall: standard output cannot be written (${error.message})\n`);
+  process.exit(exitCodes.unusableSettings);
 }

@@ -1,4 +1,4 @@
-import { mkdirSync, readdirSync, realpathSync, rmdirSync, rmSync, writeFileSync } from 'node:fs';
+import { mkdirSync, readdirSync, realpathSync, renameSync, rmdirSync, rmSync, writeFileSync } from 'node:fs';
 import { basename, dirname, join, resolve } from 'node:path';
 import { exitCodes, UserError } from '../errors.js';
 import type { Scope } from './scope.js';
@@ -49,14 +49,22 @@ export function repairOutput(out: string): void {
   });
 }
 
-/** What an unusable input leaves: `OUT.rejected/` beside an untouched OUT. @returns the folder as the reader wrote it. */
+/**
+ * What an unusable input leaves: `OUT.rejected/` beside an untouched OUT. @returns the folder as the reader wrote it.
+ * @throws UserError exit 2 when that folder holds anything else.
+ */
 export function writeRejected(out: string, files: ReadonlyMap<string, string>): string {
   const folder = `${placeOf(out)}.rejected`;
-  guarded(out, () => {
+  const name = `${out.replace(/\/+$/, '')}.rejected`;
+  guarded(name, () => {
+    if (!['absent', 'empty', 'rejected'].includes(folderState(folder))) throw notOurs(name);
     mkdirSync(folder, { recursive: true });
-    for (const [name, text] of files) writeBelow(folder, name, text);
+    for (const [file, text] of files) {
+      writeFileSync(join(folder, `${file}.partial`), text);
+      renameSync(join(folder, `${file}.partial`), join(folder, file));
+    }
   });
-  return `${out.replace(/\/+$/, '')}.rejected`;
+  return name;
 }
 
 /** The real place of an output folder, links resolved. */

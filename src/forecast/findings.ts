@@ -39,3 +39,12 @@ export function choiceFinding(
     `together, expect a count over the horizon outside its ${Math.round(100 * level)} % interval of ${lower} to ${upper} (${named})`;
   return [{ code: 'choice-outside-interval', severity: 'warning', message }];
 }
+
+/** A currency is set, and in some periods no cost is in force. */
+export function costFinding(currency: string | null, periods: readonly ForecastPeriod[]): Finding[] {
+  const without = periods.filter(({ expectedCost }) => expectedCost === null);
+  if (currency === null || without.length === 0) return [];
+  const named = without.map(({ period }) => period).join(', ');
+  const message = `no cost per return is in force in ${named}, so the expected cost holds the other periods only`;
+  return [{ code: 'cost-incomplete', severity: 'warning', message }];
+}

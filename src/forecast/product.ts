@@ -17,7 +17,7 @@ import { exposedCohorts } from './cohorts.js';
 import { type Column, firstAndLast, forecastColumns } from './columns.js';
 import { type PredictiveCounts, predictiveCounts } from './counts.js';
 import { type Expectation, type Exposed, expectation } from './exposed.js';
-import { choiceFinding, plugInFinding } from './findings.js';
+import { choiceFinding, costFinding, plugInFinding } from './findings.js';
 import { historyOf } from './history.js';
 import { columnOf, cumulative, cumulativeColumns, predictedCount, quantileProbabilities } from './summary.js';
 
@@ -77,6 +77,7 @@ export function forecastProduct(
     findings: [
       ...draws.findings,
       ...plugInFinding(periods),
+      ...costFinding(shared.currency, periods),
       ...choiceFinding(config, shared.byCandidate, family.name, periods),
     ],
   };

@@ -60,6 +60,7 @@ export function withCumulative(rows: readonly ForecastRow[]): readonly ForecastR
 function periodRow(empty: ForecastRow, period: ForecastPeriod, levels: readonly number[]): ForecastRow {
   const { expectedCost } = period;
   const { currency } = empty;
+  const priceless = currency !== null && expectedCost === null;
   return {
     ...empty,
     period: period.period,
@@ -67,7 +68,7 @@ function periodRow(empty: ForecastRow, period: ForecastPeriod, levels: readonly 
     interval: intervalOf(period, levels),
     cumulativeInterval: intervalOf(period.cumulative, levels),
     cost: expectedCost === null || currency === null ? null : toUnits(expectedCost, minorDigits(currency)),
-    status: period.partial ? ['partial-period'] : [],
+    status: [...(period.partial ? ['partial-period'] : []), ...(priceless ? ['cost-incomplete'] : [])],
   };
 }
 

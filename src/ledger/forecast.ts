@@ -20,8 +20,8 @@ import { minorDigits, unitsText } from './money.js';
  *   never summed. With several currencies there is one block a currency (and one for products without a cost), sums of
  *   the products in that currency, and then no intervals.
  * - Status is `ok`, or words with spaces between: `partial-period` (the rest of the period the as-of date falls into),
- *   `no-warranty-limit`, and in totals `products-missing` (some are not forecast) and `cost-incomplete` (some products
- *   of the sum have no cost).
+ *   `no-warranty-limit`, `cost-incomplete` (no cost is in force yet, or some products of the sum have none), and in totals
+ *   `products-missing` (some are not forecast).
  */
 export function forecastCsv(document: ForecastDocument): string {
   const products = document.products.map((product) => productRows(product, document.levels));

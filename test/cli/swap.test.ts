@@ -132,6 +132,24 @@ describe('openOutput', () => {
     expect(wordOf(join(place, 'out'))).toBe('old');
   });
 
+  it('keeps rejects beside a result, and touches no folder of somebody else', () => {
+    const out = fill('out', 'old');
+    const files = new Map([
+      ['intake.json', '{"schema":"returnfall/intake/1"}'],
+      ['rejects.csv', 'file\n'],
+    ]);
+    mkdirSync(`${out}.rejected`);
+    writeFileSync(`${out}.rejected/rejects.csv`, 'mine');
+    expect(() => writeRejected(out, files)).toThrow(
+      /invalid output folder .*out\.rejected: it holds something else/,
+    );
+    expect(readFileSync(`${out}.rejected/rejects.csv`, 'utf8')).toBe('mine');
+    rmSync(`${out}.rejected`, { recursive: true });
+    writeRejected(out, files);
+    writeRejected(out, files.set('rejects.csv', 'file,line\n'));
+    expect(readFileSync(`${out}.rejected/rejects.csv`, 'utf8')).toBe('file,line\n');
+  });
+
   it('drops the rejects of a failed attempt once a run succeeds', () => {
     const out = fill('out', 'old');
     writeRejected(

@@ -107,7 +107,7 @@ describe('inputs that do not go together', () => {
 test('what only a calendar knows is refused beside ages', () => {
   const text = '{ "ages": "a.csv", "period": "week",\n "products": { "A": { "warrantyMonths": 12 } } }';
   expect(faultLines(text)).toEqual([
-    'conflicting-input s.json:1:19: invalid period, not allowed beside ages',
-    'conflicting-input s.json:2:23: invalid products.A.warrantyMonths, not allowed beside ages',
+    'conflicting-input s.json:1:20: invalid period, not allowed beside ages; remove one of the two',
+    'conflicting-input s.json:2:23: invalid products.A.warrantyMonths, not allowed beside ages; use warrantyDays, which is in the unit of the ages',
   ]);
 });

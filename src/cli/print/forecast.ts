@@ -3,7 +3,7 @@ import type { ForecastDocument, ForecastProduct, PredictedCount } from '../../re
 import { nameOf } from './names.js';
 import { type Align, alignColumns, countText, numberText, plainNumber, printable } from './text.js';
 
-type Block = Pick<ForecastDocument['total'], 'periods' | 'untilWarrantyEnds'>;
+type Block = Pick<ForecastDocument['total'] | ForecastProduct, 'periods' | 'untilWarrantyEnds'>;
 
 /** The forecast of every product and of all together, period by period, with intervals. */
 export function forecastText(document: ForecastDocument): string {
@@ -36,7 +36,7 @@ function totalLines(document: ForecastDocument): string[] {
   const { productsIncluded, productsMissing } = document.total;
   const missing = productsMissing.map(printable).join(', ');
   return [
-    `(total) of ${productsIncluded.length} products${missing === '' ? '' : `, without ${missing}`}: expected returns`,
+    `(total) of ${productsIncluded.length} ${productsIncluded.length === 1 ? 'product' : 'products'}${missing === '' ? '' : `, without ${missing}`}: expected returns`,
     ...blockLines(document.total, document.levels),
   ];
 }

@@ -3,7 +3,7 @@ import { intervalText, levelText } from './forecast.js';
 import { nameOf } from './names.js';
 import { alignColumns, countText, shorten } from './text.js';
 
-type Block = Pick<ForecastDocument['total'], 'periods' | 'untilWarrantyEnds'>;
+type Block = Pick<ForecastDocument['total'] | ForecastProduct, 'periods' | 'untilWarrantyEnds'>;
 
 /** The numbers that a month end is about: next period, horizon and until warranty ends, in total and by product. */
 export function headlineText(document: ForecastDocument): string {
@@ -15,8 +15,17 @@ export function headlineText(document: ForecastDocument): string {
     return [`  ${label}`, countText(count.expected), `(${intervals.join('; ')})`];
   });
   const title = `expected returns of ${names}${document.asOf === null ? '' : ` after ${document.asOf}`}`;
-  const sentences = [title, ...alignColumns(lines, ['left', 'right', 'left'])];
+  const sentences = [title, ...alignColumns(lines, ['left', 'right', 'left']), ...plannedNote(document)];
   return `${[...sentences, ...(products.length > 1 ? ['', ...byProduct(document)] : [])].join('\n')}\n`;
+}
+
+/** Why the horizon may be more than what is still to come until warranty ends. */
+function plannedNote({ total }: ForecastDocument): string[] {
+  const planned = total.periods.reduce((sum, period) => sum + period.planned.expected, 0);
+  if (planned === 0 || total.untilWarrantyEnds === null) return [];
+  return [
+    `  planned shipments bring ${countText(planned)} of them; until warranty ends is of units shipped so far only`,
+  ];
 }
 
 /** One row a product, with the widest interval asked for. */
@@ -39,9 +48,11 @@ function byProduct(document: ForecastDocument): string[] {
 function headlines({ asOf }: ForecastDocument, block: Block): { label: string; count: PredictedCount }[] {
   // Without a calendar the periods are steps of use, counted from one.
   const name = (period: string) => (asOf === null ? `step ${period}` : period);
+  const rest = block.periods.find((period) => period.partial);
   const next = block.periods.find((period) => !period.partial);
   const last = block.periods.at(-1);
   return [
+    ...(rest === undefined ? [] : [{ label: `${rest.period} (rest)`, count: rest }]),
     ...(next === undefined ? [] : [{ label: name(next.period), count: next }]),
     ...(last === undefined || last === next
       ? []
