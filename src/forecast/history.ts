@@ -8,8 +8,8 @@ import { firstAndLast, pastColumns } from './columns.js';
 
 /**
  * Shipped and returned units by period up to the as-of date, and what a distribution expects of the units as they stood
- * at the start of each period: Σ units at risk · P(period) / S(start). Null family: no expectation. A record that
- * straddles periods counts in the period of its last day.
+ * at the start of each period: Σ units at risk · P(period) / S(start). Null family: no expectation. A record counts in
+ * the period that holds it; ingest refuses those that none holds.
  */
 export function historyOf(
   config: Config,

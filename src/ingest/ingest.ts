@@ -3,6 +3,7 @@ import { UserError } from '../errors.js';
 import type { Intake, Progress, Sources } from '../records.js';
 import { readAges } from './ages.js';
 import { checkInputs, checkRows } from './inputs.js';
+import { checkPeriods } from './periodfit.js';
 import type { Reading } from './reading.js';
 import { readRecords } from './records.js';
 import { readTables } from './table.js';
@@ -13,8 +14,8 @@ import { checkRejectShare, compareRejects, fileFindings } from './verdict.js';
  * Reads all inputs: records (shipments, returns, withdrawals, plan), or a Nevada-style table, or ages.
  * @returns the products, the account of every file, and every row that is not used. None of it depends on the order of
  * rows or on their division into files, but for line numbers.
- * @throws UserError exit 2 without shipments, returns or an as-of date, exit 3 for files that cannot be used; when too many rows
- * are rejected it carries the intake.
+ * @throws UserError exit 2 without shipments, returns or an as-of date, or for records that do not fit the period; exit 3 for
+ * files that cannot be used; when too many rows are rejected it carries the intake.
  */
 export async function ingest(config: Config, sources: Sources, progress: Progress): Promise<Intake> {
   checkInputs(sources);
@@ -25,6 +26,7 @@ export async function ingest(config: Config, sources: Sources, progress: Progres
   const intake = { products, files, rejects, findings: [...fileFindings(files, rejects), ...findings] };
   checkAsOf(config, intake);
   checkRejectShare(intake, config.maxRejectShare);
+  checkPeriods(config, products);
   return intake;
 }
 

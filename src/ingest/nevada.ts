@@ -3,7 +3,7 @@ import type { Cell, NevadaTable, ProductRecords, TableRow } from '../records.js'
 
 /**
  * The Nevada-style table of a product: a row for every period with shipments, a column for every period from the first of them to
- * the as-of date. A cohort belongs to the period of its first day, a cell to the period of its last.
+ * the as-of date. Cohorts and cells belong to the period that holds them; ingest refuses those that none holds.
  */
 export function nevadaTable(records: ProductRecords, kind: PeriodKind, cutoff: number): NevadaTable {
   const first = records.cohorts[0];

@@ -44,7 +44,7 @@ describe('cohorts', () => {
     const returns =
       'product,ship_date,return_date\nA,2026-01,2026-03-02\nA,2026-01-20,2026-03-02\nC,2026-01-05,2026-05-01\n';
     const withdrawals = 'product,ship_date,date,quantity\nC,2026-Q1,2026-06,2\n';
-    expect(shape(await ingestText({ shipments, returns, withdrawals }))).toEqual([
+    expect(shape(await ingestText({ shipments, returns, withdrawals }, { period: 'quarter' }))).toEqual([
       {
         product: 'A',
         resolution: 'period',
@@ -77,7 +77,7 @@ describe('cohorts', () => {
   test('by week', async () => {
     const shipments = 'product,ship_date,quantity\nA,2026-W01,10\nA,2026-01-06,4\n';
     const returns = 'product,ship_date,return_date\nA,2026-W01,2026-W03\n';
-    expect(shape(await ingestText({ shipments, returns }))).toMatchObject([
+    expect(shape(await ingestText({ shipments, returns }, { period: 'week' }))).toMatchObject([
       {
         cohorts: ['2025-12-29..2026-01-04 10', '2026-01-05..2026-01-11 4'],
         returned: ['0: 2026-01-12..2026-01-18 1'],

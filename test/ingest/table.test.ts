@@ -88,15 +88,21 @@ test('returns that the warranty forbids count as withdrawn, and a finding says s
 });
 
 test('weekly and quarterly tables, a plan beside, and columns by other names', async () => {
-  const weekly = await ingestText({
-    table: 'product;shipped in;Shipped;2026-W01;2026-W02;note\nA;2026-W01;5;1;1; \n',
-  });
+  const weekly = await ingestText(
+    {
+      table: 'product;shipped in;Shipped;2026-W01;2026-W02;note\nA;2026-W01;5;1;1; \n',
+    },
+    { period: 'week' },
+  );
   expect(cells(weekly, 'returned')).toEqual(['A 2025-12-29 2025-12-29 1', 'A 2025-12-29 2026-01-05 1']);
   expect(weekly.files[0]?.unusedColumns).toEqual(['note']);
-  const quarterly = await ingestText({
-    table: 'product,shipped_in,shipped,2026-Q2,2026-Q3\nA,2026-Q2,5,1,1\n',
-    plan: 'product,ship_period,quantity\nA,2026-Q4,9\n',
-  });
+  const quarterly = await ingestText(
+    {
+      table: 'product,shipped_in,shipped,2026-Q2,2026-Q3\nA,2026-Q2,5,1,1\n',
+      plan: 'product,ship_period,quantity\nA,2026-Q4,9\n',
+    },
+    { period: 'quarter' },
+  );
   expect(cells(quarterly, 'returned')).toEqual(['A 2026-04-01 2026-04-01 1', 'A 2026-04-01 2026-07-01 1']);
   expect(quarterly.products[0]?.planned.map(({ from, shipped }) => [isoDate(from), shipped])).toEqual([
     ['2026-11-01', 9],
