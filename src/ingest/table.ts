@@ -37,7 +37,8 @@ export async function readTables(config: Config, sources: Sources, progress: Pro
     tallies: [...table.tallies, ...withdrawn.tallies, ...plan.tallies],
     findings: [
       ...plan.findings,
-      ...lateCells([...cohorts, ...left], cutoff),
+      ...lateCells('returns', cohorts, cutoff),
+      ...lateCells('withdrawals', left, cutoff),
       ...outOfBounds(claims, products),
     ],
   };
@@ -68,10 +69,10 @@ function* datesOf(rows: readonly CohortRow[]): Generator<DatedQuantity> {
   }
 }
 
-function lateCells(rows: readonly CohortRow[], cutoff: number): Finding[] {
+function lateCells(what: string, rows: readonly CohortRow[], cutoff: number): Finding[] {
   const late = rows.reduce((sum, row) => sum + unitsBy(row, Infinity) - unitsBy(row, cutoff), 0);
-  const message = `${late} units in cells of the table after the as-of date are not counted`;
-  return late === 0 ? [] : [{ code: 'table-after-as-of', severity: 'note', message }];
+  const message = `${late} ${what} in columns of the table after the as-of date are not used`;
+  return late === 0 ? [] : [{ code: 'after-as-of', severity: 'note', message }];
 }
 
 function outOfBounds(claims: readonly Claim[], products: readonly ProductRecords[]): Finding[] {

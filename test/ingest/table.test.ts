@@ -67,14 +67,23 @@ test('withdrawals of a table need room and a product', async () => {
 });
 
 test('cells after the as-of date are left out and said to be', async () => {
-  const intake = await ingestText({ table: `${header}A,2026-08,100,1,2,3\n` }, { asOf: '2026-09-15' });
+  const beside = `${header}A,2026-08,100,0,1,4\nA,2026-08,100,0,0,5\n`;
+  const intake = await ingestText(
+    { table: `${header}A,2026-08,100,1,2,3\n`, 'table-withdrawn': beside },
+    { asOf: '2026-09-15' },
+  );
   expect(cells(intake, 'returned')).toEqual(['A 2026-08-01 2026-08-01 1', 'A 2026-08-01 2026-09-01 2']);
   expect(intake.products[0]?.returned[1]?.to).toBe((intake.products[0]?.returned[1]?.from ?? 0) + 15);
   expect(intake.findings).toEqual([
     {
-      code: 'table-after-as-of',
+      code: 'after-as-of',
       severity: 'note',
-      message: '3 units in cells of the table after the as-of date are not counted',
+      message: '3 returns in columns of the table after the as-of date are not used',
+    },
+    {
+      code: 'after-as-of',
+      severity: 'note',
+      message: '9 withdrawals in columns of the table after the as-of date are not used',
     },
   ]);
 });
@@ -118,5 +127,5 @@ test('a plan for the period that the as-of date cuts is for its rest, and a find
   expect(products[0]?.planned.map(({ from, to }) => [isoDate(from), isoDate(to - 1)])).toEqual([
     ['2026-09-16', '2026-09-30'],
   ]);
-  expect(findings.map(({ code }) => code)).toEqual(['plan-of-cut-period', 'table-after-as-of']);
+  expect(findings.map(({ code }) => code)).toEqual(['plan-of-cut-period', 'after-as-of']);
 });
