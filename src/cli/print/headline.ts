@@ -1,4 +1,4 @@
-import type { ForecastDocument, PredictedCount } from '../../records.js';
+import type { ForecastDocument, ForecastProduct, PredictedCount } from '../../records.js';
 import { intervalText, levelText } from './forecast.js';
 import { nameOf } from './names.js';
 import { alignColumns, countText, shorten } from './text.js';
