@@ -376,8 +376,14 @@ export interface ForecastMethod {
   readonly assumes: string;
 }
 
+/** A period of the sum over products. */
+export interface TotalPeriod extends Omit<ForecastPeriod, 'expectedCost'> {
+  /** Expected cost of the period, one entry a currency, sorted. */
+  readonly costs: ForecastTotal['costs'];
+}
+
 export interface ForecastTotal {
-  readonly periods: readonly Omit<ForecastPeriod, 'expectedCost'>[];
+  readonly periods: readonly TotalPeriod[];
   readonly untilWarrantyEnds: PredictedCount | null;
   readonly productsIncluded: readonly string[];
   readonly productsMissing: readonly string[];

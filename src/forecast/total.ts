@@ -36,6 +36,7 @@ export function totalForecast(config: Config, results: readonly ProductDraws[]):
         ...predictedCount(whole.expected, whole.plugIn, columnOf(counts, columns, j), probabilities),
         cumulative: predictedCount(upTo.expected, upTo.plugIn, sums[j] as Float64Array, probabilities),
         planned: added(planned),
+        costs: costsByCurrency(products, (product) => product.periods.slice(j, j + 1)),
       };
     }),
     untilWarrantyEnds: limited
@@ -43,7 +44,7 @@ export function totalForecast(config: Config, results: readonly ProductDraws[]):
       : null,
     productsIncluded: [...new Set(products.map((product) => product.product))],
     productsMissing: [...new Set(missing.map((product) => product.product))],
-    costs: costsByCurrency(products),
+    costs: costsByCurrency(products, (product) => product.periods),
     history: addHistories((included.length > 0 ? included : results).map(({ product }) => product.history)),
   };
 }
@@ -76,11 +77,15 @@ function added(parts: readonly { readonly expected: number; readonly plugIn: num
   );
 }
 
-function costsByCurrency(products: readonly ForecastProduct[]): ForecastTotal['costs'] {
+function costsByCurrency(
+  products: readonly ForecastProduct[],
+  periodsOf: (product: ForecastProduct) => readonly ForecastPeriod[],
+): ForecastTotal['costs'] {
   const costs = new Map<string, number>();
-  for (const { currency, periods } of products) {
+  for (const product of products) {
+    const { currency } = product;
     if (currency === null) continue;
-    const cost = periods.reduce((sum, period) => sum + (period.expectedCost ?? 0), 0);
+    const cost = periodsOf(product).reduce((sum, period) => sum + (period.expectedCost ?? 0), 0);
     costs.set(currency, (costs.get(currency) ?? 0) + cost);
   }
   return [...costs]

@@ -23,6 +23,8 @@ const totalPeriod = {
   planned: z.looseObject({ expected: real, plugIn: real }),
 };
 
+const costs = z.array(z.looseObject({ currency: z.string(), expectedCost: real }));
+
 const history = z.array(
   z.looseObject({
     period: z.string(),
@@ -68,11 +70,11 @@ const product: z.ZodType<ForecastProduct> = z.looseObject({
 });
 
 const total: z.ZodType<ForecastTotal> = z.looseObject({
-  periods: z.array(z.looseObject(totalPeriod)),
+  periods: z.array(z.looseObject({ ...totalPeriod, costs })),
   untilWarrantyEnds: z.looseObject(predicted).nullable(),
   productsIncluded: z.array(z.string()),
   productsMissing: z.array(z.string()),
-  costs: z.array(z.looseObject({ currency: z.string(), expectedCost: real })),
+  costs,
   history,
 });
 

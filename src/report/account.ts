@@ -1,8 +1,9 @@
 /** What went in: files with their rows and hashes, and the settings that count. */
 import type { ProductRules } from '../config.js';
-import type { FileAccount, IntakeProduct } from '../records.js';
+import { familyLabel } from '../families/label.js';
+import type { FileAccount, IntakeDocument, IntakeProduct } from '../records.js';
 import { dateText } from './dates.js';
-import { countText, measureText, moneyText, percentText } from './numbers.js';
+import { countText, measureText, percentText, rateText } from './numbers.js';
 import type { ReportInput } from './parts.js';
 import { plural } from './period-words.js';
 
@@ -11,6 +12,13 @@ export interface Entry {
   readonly label: string;
   readonly value: string;
 }
+
+/** Whether returns were set aside whose units then count as censored where the return could not be (README). */
+export function censorsReturns(files: readonly FileAccount[]): boolean {
+  return files.some(({ codes }) => censoring.some((code) => (codes[code] ?? 0) > 0));
+}
+
+const censoring = ['beyond-warranty', 'before-delay', 'before-first-use'];
 
 /** Rows of partials/files.hbs. */
 export function fileRows(files: readonly FileAccount[]) {
@@ -46,7 +54,7 @@ export function settingEntries({ settings, table }: ReportInput): readonly Entry
     ...entry('Levels of the intervals', settings.levels.map(percentText).join(', ')),
     ...entry('Draws', countText(settings.draws)),
     ...entry('Seed', String(settings.seed)),
-    ...entry('Candidates', settings.candidates.join(', ')),
+    ...entry('Candidates', settings.candidates.map(familyLabel).join(', ')),
     ...entry('Share of rows that may be rejected', percentText(settings.maxRejectShare)),
   ];
 }
@@ -55,7 +63,7 @@ export function settingEntries({ settings, table }: ReportInput): readonly Entry
 export function productEntries(
   product: IntakeProduct,
   rules: ProductRules,
-  ageUnit: string,
+  { ageUnit, files }: IntakeDocument,
 ): readonly Entry[] {
   const entry = (label: string, value: string | null) => (value === null ? [] : [{ label, value }]);
   const { firstShipped, lastShipped } = product;
@@ -63,7 +71,10 @@ export function productEntries(
   return [
     ...entry('Units', countText(product.units)),
     ...entry('Returned', countText(product.returns)),
-    ...entry('Withdrawn', countText(product.withdrawn)),
+    ...entry(
+      censorsReturns(files) ? 'Withdrawn, or censored where a return was set aside' : 'Withdrawn',
+      countText(product.withdrawn),
+    ),
     ...entry('Survivors', countText(product.survivors)),
     ...entry('Shipped', dates ? `${dateText(firstShipped)} to ${dateText(lastShipped)}` : null),
     ...entry('Planned shipments', plannedText(product)),
@@ -104,6 +115,6 @@ function delayText(rules: ProductRules, ageUnit: string): string {
 function costText(rules: ProductRules): string {
   if (rules.costPerReturn.length === 0) return 'not set';
   const amount = ({ from, amount }: ProductRules['costPerReturn'][number]) =>
-    `${moneyText(amount, rules.currency)}${from === null ? '' : ` from ${dateText(from)}`}`;
+    `${rateText(amount, rules.currency)}${from === null ? '' : ` from ${dateText(from)}`}`;
   return rules.costPerReturn.map(amount).join(', ');
 }

@@ -23,6 +23,12 @@ export const frame = {
   clipHeight: 248,
 } as const;
 
+/** Class of a drawing that leaves room on the left for the longest label of the vertical axis: `room-1` to `room-4`. */
+export function roomFor(ticks: readonly Tick[]): string {
+  const longest = Math.max(0, ...ticks.map(({ label }) => label.length));
+  return `room-${Math.min(4, Math.max(1, Math.ceil((longest - 1) / 3)))}`;
+}
+
 /** Rounded to two decimals, as every number in an SVG is. */
 export function svgNumber(value: number): number {
   return Math.round(value * 100) / 100;

@@ -4,12 +4,11 @@ import { scaleLinear } from 'd3-scale';
 import { line } from 'd3-shape';
 import { daysPerMonth } from '../calendar.js';
 import type { Curve, FitProduct, NonparametricPoint } from '../records.js';
-import { frame, svgNumber, type Tick } from './axis.js';
+import { frame, roomFor, svgNumber, type Tick } from './axis.js';
 import { candidateName, isChosen } from './candidates.js';
-import { countText, measureText, percentText, tickText } from './numbers.js';
-
-/** Enough to follow a curve by its numbers. */
-const mostCurveRows = 30;
+import { curveTable, intervalLevel, pointRows } from './curves-table.js';
+import { measureText, percentText, tickText } from './numbers.js';
+import { plural } from './period-words.js';
 
 /** View of charts/curves.hbs; null when there is neither a point nor a curve. @param ageUnit null: days, shown in months. */
 export function curvesChart(id: string, fit: FitProduct, ageUnit: string | null) {
@@ -18,21 +17,24 @@ export function curvesChart(id: string, fit: FitProduct, ageUnit: string | null)
   const unit = ageUnit ?? 'month';
   const chosen = fit.curves.filter((curve) => isChosen(fit, curve));
   const others = fit.curves.filter((curve) => !isChosen(fit, curve));
+  const yTicks = shareTicks(place);
   return {
     id,
     title: 'Share returned by age, fitted and observed',
-    description: describe(fit, place, unit),
+    description: describe(fit, place, plural(unit)),
     frame,
     xTicks: ageTicks(place),
-    yTicks: shareTicks(place),
+    yTicks,
+    room: roomFor(yTicks),
     others: others.map((curve) => ({ name: candidateName(curve), path: curvePath(curve, place) })),
     chosen: chosen.map((curve) => ({ name: candidateName(curve), path: curvePath(curve, place) })),
     points: fit.nonparametric.map((point) => pointMark(point, place, unit)),
-    unit,
+    units: plural(unit),
+    level: percentText(intervalLevel),
     warranty: warrantyMark(fit, place),
     radius: fit.nonparametric.length > 60 ? 1.75 : 3,
-    pointRows: pointRows(fit, place),
-    curveTable: curveTable(fit, place),
+    pointRows: pointRows(fit, place.unitLength),
+    curveTable: curveTable(fit, place.unitLength, place.x.domain()[1] ?? Infinity),
     legend: legend(fit, chosen, others),
   };
 }
@@ -45,14 +47,19 @@ interface Placing {
   readonly unitLength: number;
 }
 
-/** The upper bound of a thin last point may be far above; the axis then ends at half above the highest estimate. */
+/**
+ * The upper bound of a thin last point may be far above; the axis then ends at half above the highest estimate. Across,
+ * it ends with the warranty, beyond which no curve is used, unless points lie later.
+ */
 function placing(fit: FitProduct, unitLength: number): Placing {
-  const ages = [...fit.nonparametric.map((p) => p.age), ...fit.curves.flatMap((c) => c.ages)];
+  const lastPoint = max(fit.nonparametric, (p) => p.age) ?? 0;
+  const oldest = Math.max(lastPoint, max(fit.curves.flatMap((c) => c.ages)) ?? 0);
+  const end = Math.max(lastPoint, Math.min(oldest, warrantyDays(fit)));
   const chosen = fit.curves.filter((curve) => isChosen(fit, curve)).flatMap((curve) => curve.probability);
   const high = max([...fit.nonparametric.map((p) => p.probability), ...chosen]) ?? 0;
   const top = Math.min(1, 1.5 * high, Math.max(high, max(fit.nonparametric, (p) => p.upper) ?? 0));
   return {
-    x: scaleLinear([0, (max(ages) ?? 1) / unitLength], [0, 100]),
+    x: scaleLinear([0, (end > 0 ? end : 1) / unitLength], [0, 100]),
     y: scaleLinear([0, top > 0 ? top : 0.01], [frame.bottom, frame.top]).nice(5),
     unitLength,
   };
@@ -82,54 +89,43 @@ function pointMark(point: NonparametricPoint, { x, y, unitLength }: Placing, uni
     y: svgNumber(y(point.probability)),
     lower: svgNumber(y(point.lower)),
     upper: svgNumber(Math.max(y(point.upper), frame.clipTop)),
-    label: `${measureText(age)} ${unit}: ${percentText(point.probability)} returned`,
+    label: `${measureText(age)} ${age === 1 ? unit : plural(unit)}: ${percentText(point.probability)} returned`,
   };
 }
 
-/** Where warranty ends, when the axis reaches so far; months are drawn at their mean length. */
-function warrantyMark({ warrantyMonths, warrantyDays }: FitProduct, { x, unitLength }: Placing) {
-  const days = Math.min(warrantyDays ?? Infinity, (warrantyMonths ?? Infinity) * daysPerMonth);
-  const at = svgNumber(x(days / unitLength));
-  if (!(at < 100)) return null;
+/** Where warranty ends, when the axis reaches so far. */
+function warrantyMark(fit: FitProduct, { x, unitLength }: Placing) {
+  const at = svgNumber(x(warrantyDays(fit) / unitLength));
+  if (!(at <= 100)) return null;
   return { at, anchor: at < 50 ? 'start' : 'end', offset: at < 50 ? 6 : -6 };
 }
 
-function pointRows(fit: FitProduct, { unitLength }: Placing) {
-  return fit.nonparametric.map((point) => ({
-    age: measureText(point.age / unitLength),
-    probability: percentText(point.probability),
-    interval: `${percentText(point.lower)} to ${percentText(point.upper)}`,
-    atRisk: countText(point.atRisk),
-  }));
-}
-
-/** The curves at no more than `mostCurveRows` of their ages; null when they do not share them. */
-function curveTable({ curves }: FitProduct, { unitLength }: Placing) {
-  const ages = curves[0]?.ages ?? [];
-  if (ages.length === 0 || curves.some((curve) => curve.ages.length !== ages.length)) return null;
-  const step = Math.ceil(ages.length / mostCurveRows);
-  const rows = ages.flatMap((age, i) => {
-    const shares = curves.map((curve) => percentText(curve.probability[i] ?? null));
-    return i % step === 0 || i === ages.length - 1 ? [{ age: measureText(age / unitLength), shares }] : [];
-  });
-  return { names: curves.map(candidateName), rows };
+/** The age at which warranty ends, Infinity without a limit; months are drawn at their mean length. */
+function warrantyDays(fit: FitProduct): number {
+  return Math.min(fit.warrantyDays ?? Infinity, (fit.warrantyMonths ?? Infinity) * daysPerMonth);
 }
 
 function legend(fit: FitProduct, chosen: readonly Curve[], others: readonly Curve[]) {
   const entry = (kind: string, label: string, shown: boolean) => (shown ? [{ kind, label }] : []);
   return [
-    ...entry('point', 'nonparametric estimate with its interval', fit.nonparametric.length > 0),
+    ...entry(
+      'point',
+      `nonparametric estimate with its ${percentText(intervalLevel)} interval`,
+      fit.nonparametric.length > 0,
+    ),
     ...chosen.flatMap((curve) => entry('chosen', `${candidateName(curve)}, chosen`, true)),
     ...entry('other', `not chosen: ${others.map(candidateName).join(', ')}`, others.length > 0),
   ];
 }
 
-function describe(fit: FitProduct, { unitLength }: Placing, unit: string): string {
+function describe(fit: FitProduct, { unitLength }: Placing, units: string): string {
   const last = fit.nonparametric.at(-1);
-  const fitted = fit.chosen === null ? '' : ` The strong line is the chosen distribution, ${fit.chosen}.`;
-  if (last === undefined) return `Lines show the share of units returned by age in ${unit}s.${fitted}`;
-  const age = `${measureText(last.age / unitLength)} ${unit}s`;
+  const chosen = fit.candidates.find((candidate) => isChosen(fit, candidate));
+  const fitted =
+    chosen === undefined ? '' : ` The strong line is the chosen distribution, ${candidateName(chosen)}.`;
+  if (last === undefined) return `Lines show the share of units returned by age in ${units}.${fitted}`;
+  const age = `${measureText(last.age / unitLength)} ${units}`;
   const range = `${percentText(last.lower)} to ${percentText(last.upper)}`;
-  const share = `${percentText(last.probability)}, interval ${range}`;
+  const share = `${percentText(last.probability)}, ${percentText(intervalLevel)} interval ${range}`;
   return `Points show the share of units returned by age: by ${age} of age ${share}.${fitted}`;
 }

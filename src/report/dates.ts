@@ -22,6 +22,12 @@ export function periodText(label: string): string {
   return /^\d+$/.test(label) ? `step ${label}` : label;
 }
 
+/** `2026-11` → `Nov 2026`, `2026-W45` → `W45 2026`, `2026-Q4` → `Q4 2026`, `2026` → `2026`. */
+export function shortPeriodText(label: string): string {
+  const { year, short } = periodParts(label);
+  return year === null ? short : `${short} ${year}`;
+}
+
 /** Where a period stands: its year, its name within the year, its place there from 0, and the places of a year. */
 export interface PeriodParts {
   /** Null for steps of use, which are counted in tens. */

@@ -3,10 +3,11 @@ import { max } from 'd3-array';
 import { scaleLinear } from 'd3-scale';
 import { area, line } from 'd3-shape';
 import type { HistoryPeriod, PredictedCount } from '../records.js';
-import { frame, periodTicks, svgNumber, type Tick } from './axis.js';
+import { frame, periodTicks, roomFor, svgNumber, type Tick } from './axis.js';
 import { describeForecast, forecastLegend } from './forecast-words.js';
 import { betweenText, intervalOf } from './intervals.js';
-import { countText, expectedText, tickText } from './numbers.js';
+import { countText, expectedText } from './numbers.js';
+import type { PeriodWords } from './period-words.js';
 
 /** What the chart needs of a period to come. */
 export interface ChartPeriod extends PredictedCount {
@@ -19,15 +20,12 @@ export interface ForecastChartInput {
   /** Name of the chart, the root of its ids. */
   readonly id: string;
   readonly title: string;
-  /** What one period is called: `month`. */
-  readonly periodNoun: string;
   readonly history: readonly HistoryPeriod[];
   readonly periods: readonly ChartPeriod[];
   readonly levels: readonly number[];
   /** The as-of date in words, null without a calendar. */
   readonly asOf: string | null;
-  /** Turns a label into words. */
-  readonly periodText: (label: string, partial: boolean) => string;
+  readonly words: PeriodWords;
 }
 
 /** A bar of the chart, in its slot. */
@@ -46,12 +44,15 @@ export function forecastChart(input: ForecastChartInput) {
   if (slots === 0) return null;
   const place = placing(input, slots);
   const planned = input.periods.some((p) => p.planned.expected > 0);
+  const yTicks = countTicks(place);
   return {
     id: input.id,
     title: input.title,
     description: describeForecast(input),
     frame,
-    yTicks: countTicks(place),
+    yTicks,
+    room: roomFor(yTicks),
+    axis: input.words.axis,
     xTicks: periodTicks([...input.history, ...input.periods].map((p) => p.period)),
     bars: historyBars(input, place),
     fitted: fittedPath(input, place),
@@ -75,24 +76,25 @@ function placing(input: ForecastChartInput, slots: number): Placing {
   const past = input.history.flatMap((h) => [h.returned, h.fitted ?? 0]);
   const ahead = input.periods.flatMap((p) => [p.expected, ...Object.values(p.quantiles)]);
   const top = max([...past, ...ahead]) ?? 0;
-  const y = scaleLinear([0, top > 0 ? top : 1], [frame.bottom, frame.top]).nice(5);
+  const y = scaleLinear([0, Math.max(1, top)], [frame.bottom, frame.top]).nice(5);
   return { x: (slot) => (slot / slots) * 100, y, firstForecast: input.history.length };
 }
 
 function countTicks({ y }: Placing): readonly Tick[] {
-  return y.ticks(5).map((value) => ({ at: svgNumber(y(value)), label: tickText(value), wideOnly: false }));
+  const whole = y.ticks(5).filter(Number.isInteger);
+  return whole.map((value) => ({ at: svgNumber(y(value)), label: countText(value), wideOnly: false }));
 }
 
 function historyBars(input: ForecastChartInput, place: Placing): readonly Bar[] {
   return input.history.map((h, i) => {
-    const label = `${input.periodText(h.period, false)}: ${countText(h.returned)} returned`;
+    const label = `${input.words.name(h.period, false)}: ${countText(h.returned)} returned`;
     return bar(place, i, h.returned, 0.12, label);
   });
 }
 
 function plannedBars(input: ForecastChartInput, place: Placing): readonly Bar[] {
   return input.periods.map((p, i) => {
-    const label = `${input.periodText(p.period, p.partial)}: ${expectedText(p.planned.expected)} from planned shipments`;
+    const label = `${input.words.name(p.period, p.partial)}: ${expectedText(p.planned.expected)} from planned shipments`;
     return bar(place, place.firstForecast + i, p.planned.expected, 0.2, label);
   });
 }
@@ -142,7 +144,7 @@ function expectedDots(input: ForecastChartInput, { x, y, firstForecast }: Placin
   return input.periods.map((p, i) => ({
     x: svgNumber(x(firstForecast + i + 0.5)),
     y: svgNumber(y(p.expected)),
-    label: `${input.periodText(p.period, p.partial)}: ${expectedText(p.expected)} expected, ${betweenText(p, input.levels[0] ?? 0)}`,
+    label: `${input.words.name(p.period, p.partial)}: ${expectedText(p.expected)} expected, ${betweenText(p, input.levels[0] ?? 0)}`,
   }));
 }
 

@@ -29,13 +29,13 @@ export function describeForecast(input: ForecastChartInput): string {
   const [first, last] = [input.history[0], input.history.at(-1)];
   if (first !== undefined && last !== undefined) {
     const most = countText(max(input.history, (h) => h.returned) ?? 0);
-    const range = `${input.periodText(first.period, false)} to ${input.periodText(last.period, false)}`;
-    sentences.push(`Bars show returns recorded by ${input.periodNoun}, ${range}, at most ${most}.`);
+    const range = `${input.words.name(first.period, false)} to ${input.words.name(last.period, false)}`;
+    sentences.push(`Bars show returns recorded by ${input.words.noun}, ${range}, at most ${most}.`);
   }
   const [next, end] = [input.periods[0], input.periods.at(-1)];
   if (next !== undefined && end !== undefined) {
     const point = (p: ChartPeriod) =>
-      `${expectedText(p.expected)} in ${input.periodText(p.period, p.partial)}, ${betweenText(p, input.levels[0] ?? 0)}`;
+      `${expectedText(p.expected)} ${input.words.during(p.period, p.partial)}, ${betweenText(p, input.levels[0] ?? 0)}`;
     sentences.push(`The line with its bands shows the forecast: ${point(next)}; ${point(end)}.`);
   }
   return sentences.join(' ');

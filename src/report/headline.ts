@@ -1,12 +1,14 @@
 /** The answer first: sentences and key figures of a forecast. */
-import type { PredictedCount } from '../records.js';
+import type { ForecastTotal, PredictedCount } from '../records.js';
+import { costFigure, countFigure } from './figures.js';
 import type { ChartPeriod } from './forecast-chart.js';
-import { betweenText } from './intervals.js';
-import { expectedText, moneyText } from './numbers.js';
+import { betweenText, intervalOf, probablyText } from './intervals.js';
+import { expectedText } from './numbers.js';
 import type { PeriodWords } from './period-words.js';
 
 /** A period with what has come in up to its end. */
 export interface HeadlinePeriod extends ChartPeriod {
+  readonly from: string | null;
   readonly to: string | null;
   readonly cumulative: PredictedCount;
 }
@@ -18,7 +20,13 @@ export interface HeadlineInput {
   readonly levels: readonly number[];
   /** In words, null without a calendar. */
   readonly asOf: string | null;
-  readonly costs: readonly { readonly currency: string; readonly expectedCost: number }[];
+  readonly costs: ForecastTotal['costs'];
+  /** Names of forecast products whose cost is not, or not wholly, in `costs`. */
+  readonly costless: readonly string[];
+  /** `25 of 53 products` where some are not forecast, else null. */
+  readonly scope: string | null;
+  /** Units that can still be returned or have outlived their warranty. */
+  readonly survivors: number;
   readonly words: PeriodWords;
 }
 
@@ -27,20 +35,42 @@ export function headline(input: HeadlineInput) {
   const next = input.periods.find((period) => !period.partial) ?? input.periods[0];
   const last = input.periods.at(-1);
   if (next === undefined || last === undefined) return null;
-  const count = input.periods.filter((period) => !period.partial).length;
-  const over = input.words.over(count, last.to);
+  const over = overText(input, last);
+  const [level = 0] = input.levels;
+  const figure = (count: PredictedCount, label: string) => countFigure(count, level, label);
+  const until = input.untilWarrantyEnds;
   return {
-    lead: leadSentence(input, next, last, over),
-    further: [...restSentence(input), ...warrantySentence(input), ...plannedSentence(input)],
+    lead: noneLeft(input, last, over) ?? leadSentence(input, next, last, over),
+    further: [...restSentence(input), ...plannedSentence(input)],
+    /** The same with what the figures tell, where these are not shown. */
+    sentences: [...restSentence(input), ...warrantySentence(input), ...plannedSentence(input)],
     figures: [
-      figure(input, next, capital(input.words.during(next.period, next.partial))),
-      ...(last === next ? [] : [figure(input, last.cumulative, capital(over))]),
-      ...(input.untilWarrantyEnds === null
-        ? []
-        : [figure(input, input.untilWarrantyEnds, 'Until warranty ends, units shipped so far')]),
-      ...costFigure(input, over),
+      figure(next, input.words.during(next.period, next.partial)),
+      ...(last === next ? [] : [figure(last.cumulative, over)]),
+      ...(until === null ? [] : [figure(until, `until warranty ends, ${input.words.standing}`)]),
+      ...costFigure(input.costs, input.costless, over),
     ],
   };
+}
+
+function overText({ periods, words }: HeadlineInput, last: HeadlinePeriod): string {
+  const [first] = periods;
+  return words.over({
+    periods: periods.filter((period) => !period.partial).length,
+    lastDay: last.to,
+    partialFrom: first?.partial === true ? first.from : null,
+  });
+}
+
+/** What to say where no survivor can be returned; null where one can. */
+function noneLeft(input: HeadlineInput, last: HeadlinePeriod, over: string): string | null {
+  const { survivors, untilWarrantyEnds, levels } = input;
+  const { upper } = intervalOf(last.cumulative, levels.at(-1) ?? 0);
+  if (last.cumulative.expected > 0 || (upper ?? 0) > 0) return null;
+  const none = `expect no returns ${over}`;
+  if (survivors === 0) return `${scoped(input, 'No unit is left that could be returned')}: ${none}.`;
+  if (untilWarrantyEnds?.expected !== 0) return null;
+  return `${scoped(input, 'All survivors are past their warranty')}: ${none}.`;
 }
 
 function leadSentence(
@@ -49,10 +79,16 @@ function leadSentence(
   last: HeadlinePeriod,
   over: string,
 ): string {
-  const [level] = input.levels;
-  const first = `Expect ${returns(next)} ${input.words.during(next.period, next.partial)}, ${betweenText(next, level ?? 0)}`;
+  const [level = 0] = input.levels;
+  const expected = scoped(input, `Expect ${returns(next)}`);
+  const first = `${expected} ${input.words.during(next.period, next.partial)}, ${probablyText(next, level)}`;
   if (last === next) return `${first}.`;
-  return `${first}, and ${expectedText(last.cumulative.expected)} ${over}, ${betweenText(last.cumulative, level ?? 0)}.`;
+  return `${first}, and ${expectedText(last.cumulative.expected)} ${over}, ${betweenText(last.cumulative, level)}.`;
+}
+
+/** `For 25 of 53 products, expect …`. */
+function scoped({ scope }: HeadlineInput, text: string): string {
+  return scope === null ? text : `For ${scope}, ${text.charAt(0).toLowerCase()}${text.slice(1)}`;
 }
 
 function restSentence({ periods, words, levels }: HeadlineInput): readonly string[] {
@@ -81,27 +117,6 @@ function plannedSentence({ periods }: HeadlineInput): readonly string[] {
   ];
 }
 
-function figure({ levels }: HeadlineInput, count: PredictedCount, label: string) {
-  return {
-    label,
-    values: [expectedText(count.expected)],
-    detail: betweenText(count, levels[0] ?? 0),
-    money: false,
-  };
-}
-
-function costFigure({ costs }: HeadlineInput, over: string) {
-  if (costs.length === 0) return [];
-  const values = costs.map((cost) => moneyText(cost.expectedCost, cost.currency));
-  const detail = 'expected returns at the cost per return in force';
-  return [{ label: `Expected cost ${over}`, values, detail, money: true }];
-}
-
 function returns(count: PredictedCount): string {
-  const text = expectedText(count.expected);
-  return `${text} ${text === '1' ? 'return' : 'returns'}`;
-}
-
-function capital(text: string): string {
-  return text.charAt(0).toUpperCase() + text.slice(1);
+  return `${expectedText(count.expected)} returns`;
 }

@@ -3,7 +3,7 @@ import { max, quantile } from 'd3-array';
 import { scaleLinear, scaleThreshold } from 'd3-scale';
 import type { NevadaTable } from '../records.js';
 import { coarserTable } from './coarser-table.js';
-import { periodParts } from './dates.js';
+import { periodParts, shortPeriodText } from './dates.js';
 import { countText, noNumber, tickText } from './numbers.js';
 
 /** Shades beyond the empty one. */
@@ -24,7 +24,7 @@ export function heatMap(full: NevadaTable, noun: string) {
     narrow: table.periods.length > 24,
     wide: isWide(table),
     rows: table.rows.map((row) => ({
-      label: shortLabel(row.shippedIn),
+      label: shortPeriodText(row.shippedIn),
       shipped: countText(row.shipped),
       returned: countText(sum(row.returned)),
       withdrawn: countText(sum(row.withdrawn)),
@@ -62,14 +62,20 @@ function shading(table: NevadaTable): Shading {
       rates.filter((rate) => rate > 0),
       0.95,
     ) ?? 1;
-  const steps = scaleLinear([0, top], [0, 1])
-    .ticks(shades)
-    .filter((step) => step > 0)
-    .slice(0, shades - 1);
+  const steps = roundSteps(top);
   const scale = scaleThreshold<number, number>()
     .domain(steps)
     .range([...steps.keys(), steps.length].map((i) => i + 1));
   return { shade: (rate) => (rate === 0 ? 0 : scale(rate)), legend: legend(steps) };
+}
+
+/** The smallest round step up to `top` that leaves one shade for what lies above. */
+function roundSteps(top: number): readonly number[] {
+  const scale = scaleLinear([0, top], [0, 1]);
+  const choices = Array.from({ length: shades }, (_, i) =>
+    scale.ticks(shades - i).filter((step) => step > 0),
+  );
+  return choices.find((steps) => steps.length < shades) ?? [top];
 }
 
 function legend(steps: readonly number[]): Shading['legend'] {
@@ -83,12 +89,6 @@ function legend(steps: readonly number[]): Shading['legend'] {
 function isWide({ periods, rows }: NevadaTable): boolean {
   const digits = String(max(rows.flatMap((row) => row.returned)) ?? 0).length;
   return periods.length * (digits + 1) > 72;
-}
-
-/** `Nov 2026`, `Q4 2026`, `2026`. */
-function shortLabel(label: string): string {
-  const { year, short } = periodParts(label);
-  return year === null ? short : `${short} ${year}`;
 }
 
 /** Runs of equal years with their length. */

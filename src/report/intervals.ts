@@ -17,6 +17,12 @@ export function betweenText(count: PredictedCount, level: number): string {
   return `between ${countText(lower)} and ${countText(upper)} (${percentText(level)})`;
 }
 
+/** `with 80 % probability between 24 and 39`, where an interval is first spoken of. */
+export function probablyText(count: PredictedCount, level: number): string {
+  const { lower, upper } = intervalOf(count, level);
+  return `with ${percentText(level)} probability between ${countText(lower)} and ${countText(upper)}`;
+}
+
 /** `24 to 39`. */
 export function intervalText(count: PredictedCount, level: number): string {
   const { lower, upper } = intervalOf(count, level);

@@ -186,5 +186,6 @@ export function period(
     cumulative: count(cumulative),
     planned: { expected: 0, plugIn: 0 },
     expectedCost: cost,
+    costs: [],
   };
 }

@@ -110,8 +110,8 @@ describe('forecast.csv', () => {
 
   test('the rest of a period is marked, in products and in the total, and is part of the cumulative sums', () => {
     const rest = { ...period('2026-11', november, 3, 3), partial: true };
-    const product = forecastProduct('Rest', { periods: [rest, period('2026-12', december, 5, 8)] });
-    const rows = lines(forecastCsv(forecastDocument([product], { periods: product.periods })));
+    const periods = [rest, period('2026-12', december, 5, 8)];
+    const rows = lines(forecastCsv(forecastDocument([forecastProduct('Rest', { periods })], { periods })));
     expect(rows.slice(1)).toEqual([
       'Rest,,2026-11,3.00,-2,8,3.00,-2,8,,,partial-period',
       'Rest,,2026-12,5.00,0,10,8.00,3,13,,,ok',

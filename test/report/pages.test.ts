@@ -34,6 +34,13 @@ function shown(value: number): string {
         .replace(/\B(?=(\d{3})+$)/g, ',');
 }
 
+/** The rule of a column: one decimal in all of it where any is below 10. */
+function shownInColumn(values: readonly number[]): readonly string[] {
+  const decimals = values.some((value) => Number(value.toFixed(1)) < 10) ? 1 : 0;
+  const digits = { minimumFractionDigits: decimals, maximumFractionDigits: decimals };
+  return values.map((value) => value.toLocaleString('en-US', digits));
+}
+
 describe('the set of pages', () => {
   it('is an index and a page a product, or one file', () => {
     const names = fixtureProducts.map((p) => `products/${slugOf(p.product, null)}.html`);
@@ -86,7 +93,7 @@ describe('a page by itself', () => {
 
   it('shows hostile names as text', () => {
     expect(productPage(hostileName)).toContain(
-      '<h1>&lt;script&gt;alert(&quot;x&quot;)&lt;/script&gt; &amp; &#x27;quoted&#x27; {{braces}}',
+      '<h1 id="content">&lt;script&gt;alert(&quot;x&quot;)&lt;/script&gt; &amp; &#x27;quoted&#x27; {{braces}}',
     );
   });
 
@@ -112,11 +119,13 @@ describe('numbers on the page', () => {
     for (const product of forecast.products.filter((p) => p.notForecast === null)) {
       const rows = tableRows(productPage(product.product), 'numbers forecast');
       expect(rows).toHaveLength(product.periods.length);
+      const single = shownInColumn(product.periods.map((period) => period.expected));
+      const summed = shownInColumn(product.periods.map((period) => period.cumulative.expected));
       for (const [i, period] of product.periods.entries()) {
         const q = (count: typeof period.cumulative, lower: string, upper: string) =>
           `${(count.quantiles[lower] ?? -1).toLocaleString('en-US')} to ${(count.quantiles[upper] ?? -1).toLocaleString('en-US')}`;
-        const counts = [period, period.cumulative].flatMap((count) => [
-          shown(count.expected),
+        const counts = [period, period.cumulative].flatMap((count, column) => [
+          [single, summed][column]?.[i],
           q(count, '0.1', '0.9'),
           q(count, '0.025', '0.975'),
         ]);
@@ -142,7 +151,7 @@ describe('numbers on the page', () => {
     const { expected, quantiles } = next as NonNullable<typeof next>;
     const lead = /<p class="lead">(.*?)<\/p>/.exec(page('index.html'))?.[1] ?? '';
     expect(lead).toContain(
-      `Expect ${shown(expected)} returns in November 2026, between ${quantiles['0.1']} and ${quantiles['0.9']} (80\u00a0%)`,
+      `For 4 of 5 products, expect ${shown(expected)} returns in November 2026, with 80\u00a0% probability between ${quantiles['0.1']} and ${quantiles['0.9']}`,
     );
     expect(lead).toContain(`${shown(last?.cumulative.expected ?? 0)} over the 12 months to 31 October 2027`);
   });

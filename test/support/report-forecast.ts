@@ -74,6 +74,13 @@ export function forecastTotal(products: readonly ForecastProduct[]): ForecastTot
   const currencies = [
     ...new Set(included.flatMap((p) => (p.currency === null ? [] : [p.currency]))),
   ].toSorted();
+  const costsIn = (pick: (p: ForecastProduct) => readonly ForecastPeriod[]) =>
+    currencies.map((currency) => ({
+      currency,
+      expectedCost: sum((p) =>
+        p.currency === currency ? pick(p).reduce((cost, period) => cost + (period.expectedCost ?? 0), 0) : 0,
+      ),
+    }));
   return {
     periods: Array.from({ length }, (_, i) => {
       const first = included[0]?.periods[i] as ForecastPeriod;
@@ -83,19 +90,13 @@ export function forecastTotal(products: readonly ForecastProduct[]): ForecastTot
         ...{ period: first.period, from: first.from, to: first.to, partial: false },
         cumulative: predicted(sum((p) => p.periods[i]?.cumulative.expected ?? 0)),
         planned: { expected: planned, plugIn: planned },
+        costs: costsIn((p) => p.periods.slice(i, i + 1)),
       };
     }),
     untilWarrantyEnds: length === 0 ? null : predicted(sum((p) => p.untilWarrantyEnds?.expected ?? 0)),
     productsIncluded: included.map((p) => p.product),
     productsMissing: products.filter((p) => p.notForecast !== null).map((p) => p.product),
-    costs: currencies.map((currency) => ({
-      currency,
-      expectedCost: sum((p) =>
-        p.currency === currency
-          ? p.periods.reduce((cost, period) => cost + (period.expectedCost ?? 0), 0)
-          : 0,
-      ),
-    })),
+    costs: costsIn((p) => p.periods),
     history: longest.map((h) => {
       const same = (p: ForecastProduct) => p.history.find((other) => other.period === h.period);
       return {

@@ -61,7 +61,7 @@ export function agesInput(): ReportInput {
   ] as const;
   const noCalendar = { firstShipped: null, lastShipped: null, resolution: 'age', table: null, ages } as const;
   const byCandidate = forecast.byCandidate.map((own) => ({ ...own, untilWarrantyEnds: null }));
-  const unlimited = { periods, history: [], untilWarrantyEnds: null };
+  const unlimited = { history: [], untilWarrantyEnds: null };
   return {
     ...base,
     settings: {
@@ -90,8 +90,12 @@ export function agesInput(): ReportInput {
             ...base.forecast,
             asOf: null,
             horizon: 6,
-            products: [{ ...forecast, ...unlimited, byCandidate }],
-            total: { ...base.forecast.total, ...unlimited },
+            products: [{ ...forecast, ...unlimited, periods, byCandidate }],
+            total: {
+              ...base.forecast.total,
+              ...unlimited,
+              periods: periods.map((period) => ({ ...period, costs: [] })),
+            },
           },
   };
 }
