@@ -2,6 +2,7 @@ import type { Config } from '../config.js';
 import { UserError } from '../errors.js';
 import type { Intake, Progress, Sources } from '../records.js';
 import { readAges } from './ages.js';
+import { endsEarly } from './ending.js';
 import { checkInputs, checkRows } from './inputs.js';
 import { checkPeriods } from './periodfit.js';
 import type { Reading } from './reading.js';
@@ -23,7 +24,8 @@ export async function ingest(config: Config, sources: Sources, progress: Progres
   const files = await Promise.all(tallies.map(fileAccount));
   checkRows(files);
   const rejects = tallies.flatMap((tally) => tally.rejects).sort(compareRejects);
-  const intake = { products, files, rejects, findings: [...fileFindings(files, rejects), ...findings] };
+  const all = [...fileFindings(files, rejects), ...findings, ...endsEarly(config, tallies)];
+  const intake = { products, files, rejects, findings: all };
   checkAsOf(config, intake);
   checkRejectShare(intake, config.maxRejectShare);
   checkPeriods(config, products);

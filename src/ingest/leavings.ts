@@ -14,7 +14,7 @@ import type { Dated } from './dated.js';
 import { type DateReader, dateReader } from './dates.js';
 import type { ShippedLot } from './fleet.js';
 import { readRows } from './rows.js';
-import { type FileTally, type RowRef, rejectRow, setAsideRow, shownRow } from './tally.js';
+import { type FileTally, noteDays, type RowRef, rejectRow, setAsideRow, shownRow } from './tally.js';
 
 /** A row of a returns or withdrawals file that could be read: units that left the fleet. */
 export interface Leaving extends RowRef {
@@ -55,6 +55,7 @@ export async function readLeavings(
       return (cells, line) => {
         const leaving = readLeaving(tally, { cells, line }, at, readDate);
         if (leaving === null) return;
+        noteDays(tally, leaving.when, cutoff);
         if (leaving.when.from < cutoff) handle(leaving);
         else setAsideRow(leaving, 'after-as-of', dateField(kind), `${kind} after the as-of date`);
       };

@@ -14,7 +14,7 @@ import { findColumns } from './columns.js';
 import type { Dated } from './dated.js';
 import { dateReader } from './dates.js';
 import { readRows } from './rows.js';
-import { type FileTally, setAsideRow } from './tally.js';
+import { type FileTally, noteDays, setAsideRow } from './tally.js';
 
 /** A row of a shipments file that could be read and counts. */
 export interface ShipmentRow {
@@ -57,6 +57,7 @@ export async function readShipments(
         const row = { cells, line };
         const shipment = readShipment(tally, row, at, readDate);
         if (shipment === null) return;
+        noteDays(tally, shipment.shipped, cutoff);
         if (shipment.shipped.from < cutoff) handle(shipment, row);
         else setAsideRow(refOf(tally, row), 'after-as-of', 'ship_date', 'shipped after the as-of date');
       };

@@ -18,9 +18,9 @@ import type { CohortRow } from './tablerow.js';
  */
 export async function readTables(config: Config, sources: Sources, progress: Progress): Promise<Reading> {
   const cutoff = cutoffOf(config);
-  const table = await readCohortRows(sources.table, 'table', config.table, progress);
+  const table = await readCohortRows(config, sources.table, 'table', progress);
   const beside = sources['table-withdrawn'];
-  const withdrawn = await readCohortRows(beside, 'table-withdrawn', config.tableWithdrawn, progress);
+  const withdrawn = await readCohortRows(config, beside, 'table-withdrawn', progress);
   if (config.asOf === null) throw missingAsOf(config.period, datesOf([...table.rows, ...withdrawn.rows]));
   const fleet = newFleet();
   const cohorts = usableCohorts(table.rows, cutoff);

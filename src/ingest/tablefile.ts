@@ -1,12 +1,13 @@
-import type { InputConfig } from '../config.js';
+import type { Config } from '../config.js';
 import type { Progress, Source } from '../records.js';
+import { cutoffOf } from './asof.js';
 import { findColumns } from './columns.js';
 import { dateReader } from './dates.js';
 import { byteProgress } from './progress.js';
 import { readRows } from './rows.js';
 import { checkStrays, periodColumns } from './tablehead.js';
 import { type CohortRow, readCohortRow } from './tablerow.js';
-import { type FileTally, newTally } from './tally.js';
+import { type FileTally, newTally, noteDays } from './tally.js';
 
 /** The readable rows of tables, and the accounts of their files. */
 export interface CohortRows {
@@ -20,11 +21,13 @@ export interface CohortRows {
  * @throws UserError exit 3 for a file that cannot be used, such as one without a column headed by a period.
  */
 export async function readCohortRows(
+  config: Config,
   sources: readonly Source[],
   role: 'table' | 'table-withdrawn',
-  input: InputConfig,
   progress: Progress,
 ): Promise<CohortRows> {
+  const input = role === 'table' ? config.table : config.tableWithdrawn;
+  const cutoff = cutoffOf(config);
   const rows: CohortRow[] = [];
   const tallies = sources.map((source) => newTally(source, role));
   const read = dateReader(input.dateFormat);
@@ -36,13 +39,22 @@ export async function readCohortRows(
       tally.unitsAt = found.periods.map(({ at }) => at);
       return (cells: string[], line: number) => {
         const row = readCohortRow(tally, { cells, line }, found.periods, read);
-        if (row !== null) rows.push(row);
+        if (row !== null) {
+          rows.push(row);
+          noteDays(tally, row.shippedIn, cutoff);
+        }
         if (cells.length !== header.length) return;
-        for (const at of found.others) if (cells[at]?.trim() !== '') strays.add(at);
+        for (const { at } of filled(found.others, cells)) strays.add(at);
+        for (const { when } of filled(found.periods, cells)) noteDays(tally, when, cutoff);
       };
     };
     tally.read = await readRows(tally.source, input.encoding, begin, await byteProgress(tally, progress));
     checkStrays(tally, strays, input.dateFormat);
   }
   return { rows, tallies };
+}
+
+/** The columns whose cell in a row holds something; a 0 is something. */
+function filled<T extends { readonly at: number }>(columns: readonly T[], cells: readonly string[]): T[] {
+  return columns.filter(({ at }) => cells[at]?.trim() !== '');
 }

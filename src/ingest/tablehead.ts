@@ -16,8 +16,8 @@ export interface TableHead {
   readonly periods: readonly PeriodColumn[];
   /** The columns, those headed by a period no longer among the unused. */
   readonly columns: Columns;
-  /** Positions of columns that are neither a field nor headed by a period. */
-  readonly others: readonly number[];
+  /** The columns that are neither a field nor headed by a period. */
+  readonly others: readonly { readonly at: number }[];
 }
 
 /**
@@ -34,8 +34,8 @@ export function periodColumns(source: Source, columns: Columns, read: DateReader
   if (periods.length === 0) throw noPeriods(source, header);
   checkDoubled(source, header, periods);
   const headed = new Set(periods.map(({ at }) => at));
-  const others = spare.filter((at) => !headed.has(at));
-  const names = others.map((at) => header[at] as string).filter((name) => name !== '');
+  const others = spare.filter((at) => !headed.has(at)).map((at) => ({ at }));
+  const names = others.map(({ at }) => header[at] as string).filter((name) => name !== '');
   return { periods, others, columns: { ...columns, unused: names } };
 }
 

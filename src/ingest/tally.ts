@@ -1,3 +1,4 @@
+import type { DayRange } from '../calendar.js';
 import { rowText } from '../csv.js';
 import { UserError } from '../errors.js';
 import type { FileAccount, InputRole, RejectCode, RejectRow, SetAsideCode, Source } from '../records.js';
@@ -12,6 +13,8 @@ export interface FileTally {
   unitsAt: readonly number[] | null;
   read: number;
   rejected: number;
+  /** End of the latest days that a row gives, as far as they count by the as-of date; -Infinity without any. */
+  seenUntil: number;
   /** Size and SHA-256 of the file, null until they are asked for. */
   digest: Awaited<ReturnType<Source['digest']>> | null;
   readonly rejects: RejectRow[];
@@ -45,6 +48,7 @@ export function newTally(source: Source, role: InputRole): FileTally {
     unitsAt: null,
     read: 0,
     rejected: 0,
+    seenUntil: -Infinity,
     digest: null,
     rejects: [],
     rejectedUnits: new Map(),
@@ -67,6 +71,11 @@ export function rejectRow(row: RowRef, code: RejectCode, field: string | null, m
 /** Puts a row that is right, but does not count, beside the used ones. */
 export function setAsideRow(row: RowRef, code: SetAsideCode, field: string | null, message: string): void {
   keep(row, 'set-aside', code, field, message);
+}
+
+/** Notes the days that a row gives. @param cutoff end of the as-of day; what comes after it is not noted. */
+export function noteDays(tally: FileTally, { from, to }: DayRange, cutoff: number): void {
+  if (from < cutoff && to > tally.seenUntil) tally.seenUntil = Math.min(to, cutoff);
 }
 
 /** A row as rejects.csv shows it; cells that are too long are cut. */

@@ -133,7 +133,8 @@ describe('exit 3: files that cannot be used', () => {
         'invalid date soon: it cannot be read as ISO 8601 (2026-10-31, 2026-10); set dateFormat',
     );
     expect(error.intake?.rejects).toHaveLength(3);
-    expect((await ingestText({ shipments, returns: bad }, { maxRejectShare: 0.75 })).findings).toMatchObject([
+    const allowed = { asOf: '2026-02-28', maxRejectShare: 0.75 };
+    expect((await ingestText({ shipments, returns: bad }, allowed)).findings).toMatchObject([
       { code: 'rows-rejected', severity: 'warning' },
     ]);
   });
@@ -208,12 +209,13 @@ describe('without an as-of date', () => {
 
 test('empty files of withdrawals and plan, and one of several of returns, are notes', async () => {
   const several = [memorySource('r1.csv', returns), memorySource('r2.csv', 'unit,return_date\n')];
-  const { findings } = await ingestText({
+  const given = {
     shipments,
     returns: several,
     withdrawals: 'unit,date\n',
     plan: 'product,ship_period,quantity\n',
-  });
+  };
+  const { findings } = await ingestText(given, { asOf: '2026-02-28' });
   expect(findings.map(({ code, message }) => `${code} ${message}`)).toEqual([
     'no-rows r2.csv has a header and no rows',
     'no-rows withdrawals.csv has a header and no rows',
