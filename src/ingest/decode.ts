@@ -6,7 +6,7 @@ import type { Source } from '../records.js';
  * The bytes of a source as UTF-8 without a byte-order mark. A byte-order mark (UTF-8, UTF-16) decides the encoding; without
  * one it is `encoding`, a WHATWG label, and UTF-8 where that is null.
  * @param onBytes is told the length of each piece as it is read.
- * @throws UserError exit 2 for an unknown label, exit 3 for bytes that the encoding does not allow.
+ * @throws UserError exit 2 for an unknown label, exit 3 for bytes that the encoding does not allow, and for compressed ones.
  */
 export async function* utf8Bytes(
   source: Source,
@@ -19,10 +19,10 @@ export async function* utf8Bytes(
     let next = await chunks.next();
     for (; !next.done && head.length < 3; next = await chunks.next())
       head = Buffer.concat([head, next.value]);
+    if (head[0] === 0x1f && head[1] === 0x8b) throw compressed(source);
     const mark = byteOrderMark(head);
     const skipped = mark?.length ?? 0;
-    const label = mark?.label ?? encoding;
-    const decode = label === null ? passUtf8(source) : decodeText(source, label);
+    const decode = decoderFor(source, mark?.label ?? encoding ?? 'utf-8');
     yield decode.chunk(head.subarray(skipped), skipped);
     for (; !next.done; next = await chunks.next()) yield decode.chunk(asBuffer(next.value), 0);
     yield decode.end();
@@ -47,11 +47,16 @@ interface Decoder {
   readonly end: () => Buffer;
 }
 
-function byteOrderMark(head: Buffer): { label: string | null; length: number } | null {
-  if (head[0] === 0xef && head[1] === 0xbb && head[2] === 0xbf) return { label: null, length: 3 };
+function byteOrderMark(head: Buffer): { label: string; length: number } | null {
+  if (head[0] === 0xef && head[1] === 0xbb && head[2] === 0xbf) return { label: 'utf-8', length: 3 };
   if (head[0] === 0xff && head[1] === 0xfe) return { label: 'utf-16le', length: 2 };
   if (head[0] === 0xfe && head[1] === 0xff) return { label: 'utf-16be', length: 2 };
   return null;
+}
+
+function decoderFor(source: Source, label: string): Decoder {
+  const decoder = textDecoder(label);
+  return decoder.encoding === 'utf-8' ? passUtf8(source) : decodeText(source, label, decoder);
 }
 
 /** UTF-8 in, UTF-8 out: each chunk is only checked, and cut so that no character is split. */
@@ -99,8 +104,7 @@ function firstInvalid(bytes: Buffer): number {
   }
 }
 
-function decodeText(source: Source, label: string): Decoder {
-  const decoder = textDecoder(label);
+function decodeText(source: Source, label: string, decoder: InstanceType<typeof TextDecoder>): Decoder {
   const decode = (bytes: Uint8Array, stream: boolean) => {
     try {
       return Buffer.from(decoder.decode(bytes, { stream }));
@@ -144,6 +148,12 @@ function invalidText(source: Source, label: string): UserError {
   const message = `invalid text: some bytes are not ${label}`;
   const remedy = 'save the file as UTF-8, or correct the setting encoding';
   return new UserError({ code: 'invalid-encoding', file: source.name, message, remedy }, 3);
+}
+
+function compressed(source: Source): UserError {
+  const message = 'invalid text: this is gzip';
+  const remedy = 'name it .gz, or unpack it before it is piped in';
+  return new UserError({ code: 'compressed-file', file: source.name, message, remedy }, 3);
 }
 
 function asBuffer(bytes: Uint8Array): Buffer {

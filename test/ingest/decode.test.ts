@@ -37,6 +37,24 @@ test('a compressed file is read as its content', async () => {
   expect(await decoded(gzipSync(text), null, 7, 'a.csv.gz')).toBe(text);
 });
 
+test.each([1, 100])('gzip under another name is said to be that, in pieces of %i bytes', async (length) => {
+  for (const [name, encoding] of [
+    ['-', null],
+    ['a.csv', 'windows-1252'],
+  ] as const) {
+    await expect(decoded(gzipSync(text), encoding, length, name)).rejects.toMatchObject({
+      exitCode: 3,
+      faults: [
+        { code: 'compressed-file', file: name, remedy: expect.stringMatching(/^name it \.gz, or unpack/) },
+      ],
+    });
+  }
+});
+
+test('a byte-order mark of UTF-8 decides against the setting', async () => {
+  expect(await decoded(`\ufeff${text}`, 'windows-1252', 5)).toBe(text);
+});
+
 test.each([
   ['a lone continuation byte', [0x61, 0x80, 0x61], 1],
   ['a character cut by the end of the file', [0x61, 0xe2, 0x82], 1],
@@ -48,10 +66,12 @@ test.each([
   for (const length of [1, 2, 3, 100]) {
     for (const before of [0, 1000]) {
       const content = Buffer.concat([Buffer.alloc(before, 'x'), Buffer.from(bytes)]);
-      const error = await decoded(content, null, length).catch((e: unknown) => e);
-      expect(error).toBeInstanceOf(UserError);
-      expect(error).toMatchObject({ exitCode: 3, faults: [{ code: 'invalid-utf8', file: 'a.csv' }] });
-      expect((error as UserError).message).toContain(`byte offset ${before + offset};`);
+      for (const encoding of [null, 'utf-8', 'UTF8']) {
+        const error = await decoded(content, encoding, length).catch((e: unknown) => e);
+        expect(error).toBeInstanceOf(UserError);
+        expect(error).toMatchObject({ exitCode: 3, faults: [{ code: 'invalid-utf8', file: 'a.csv' }] });
+        expect((error as UserError).message).toContain(`byte offset ${before + offset};`);
+      }
     }
   }
 });
