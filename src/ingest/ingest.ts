@@ -2,6 +2,7 @@ import type { Config } from '../config.js';
 import { UserError } from '../errors.js';
 import type { Intake, Progress, Sources } from '../records.js';
 import { readAges } from './ages.js';
+import { checkShares } from './consequences.js';
 import { endsEarly } from './ending.js';
 import { checkInputs, checkRows } from './inputs.js';
 import { checkPeriods } from './periodfit.js';
@@ -9,7 +10,7 @@ import type { Reading } from './reading.js';
 import { readRecords } from './records.js';
 import { readTables } from './table.js';
 import { fileAccount } from './tally.js';
-import { checkRejectShare, compareRejects, fileFindings } from './verdict.js';
+import { compareRejects, fileFindings } from './verdict.js';
 
 /**
  * Reads all inputs: records (shipments, returns, withdrawals, plan), or a Nevada-style table, or ages.
@@ -27,7 +28,7 @@ export async function ingest(config: Config, sources: Sources, progress: Progres
   const all = [...fileFindings(files, rejects), ...findings, ...endsEarly(config, tallies)];
   const intake = { products, files, rejects, findings: all };
   checkAsOf(config, intake);
-  checkRejectShare(intake, config.maxRejectShare);
+  checkShares(intake, config.maxRejectShare);
   checkPeriods(config, products);
   return intake;
 }

@@ -139,6 +139,21 @@ describe('exit 3: files that cannot be used', () => {
     ]);
   });
 
+  test('where most shipments are rejected, returns that only miss them are no fault of their own', async () => {
+    const lost = `${shipments.replace('2026-01', '31.01.26')}B,31.01.26,10\nC,2026-01,4\n`;
+    const late = `${returns}B,2026-01,2026-02,1\nC,2026-01,2026-02,5\n`;
+    const withdrawals = 'product,ship_date,date\nC,2026-01,soon\nA,2026-01,2026-02\n';
+    const given = { shipments: lost, returns: late, withdrawals };
+    const error = await faultOf(given, { maxRejectShare: 0.1 });
+    expect(error.faults.map(({ file }) => file)).toEqual(['shipments.csv', 'withdrawals.csv']);
+    expect(error.intake?.files.map(({ rejected }) => rejected)).toEqual([2, 3, 2]);
+    const half = { ...given, shipments: `${lost}C,2026-02,4\n` };
+    const kept = await faultOf(half, { maxRejectShare: 0.1 });
+    expect(kept.faults.map(({ file }) => file)).toEqual(['shipments.csv', 'returns.csv', 'withdrawals.csv']);
+    const lenient = await faultOf(given, { maxRejectShare: 0.7 });
+    expect(lenient.faults.map(({ file }) => file)).toEqual(['returns.csv', 'withdrawals.csv']);
+  });
+
   test('a file with more than half a million bad rows is not read on', async () => {
     const rows = 'A,soon,1\n'.repeat(500_001);
     const error = await faultOf({ shipments: `product,ship_date,quantity\n${rows}`, returns });
