@@ -1,6 +1,6 @@
 import type { AgeGroup } from '../records.js';
-import { badQuantity, isWellFormed, missingValue, type Row, textAt, wholeNumber } from './cells.js';
-import type { FileTally } from './tally.js';
+import { badQuantity, isWellFormed, missingValue, type Row, refOf, textAt, wholeNumber } from './cells.js';
+import { type FileTally, rejectRow } from './tally.js';
 
 /** The ages in a row: exact in `age`, or from `age_from` to `age_to`; null when the row is rejected. */
 export function readAge(tally: FileTally, row: Row): AgeGroup | null {
@@ -8,9 +8,7 @@ export function readAge(tally: FileTally, row: Row): AgeGroup | null {
   const at = (field: string) => textAt(row, tally.columns?.at(field) ?? -1);
   const outcome = at('outcome').toLowerCase();
   if (outcome === '') return missingValue(tally, row, 'outcome');
-  if (outcome !== 'returned' && outcome !== 'surviving') {
-    return badQuantity(tally, row, 'outcome', outcome, 'it must be returned or surviving');
-  }
+  if (outcome !== 'returned' && outcome !== 'surviving') return noOutcome(tally, row, outcome);
   const quantity = quantityOf(tally, row, at('quantity'));
   if (quantity === null) return null;
   const [age, from, to] = [at('age'), at('age_from'), at('age_to')];
@@ -19,6 +17,13 @@ export function readAge(tally: FileTally, row: Row): AgeGroup | null {
   }
   if (outcome === 'surviving') return surviving(tally, row, age !== '' ? age : from, to, quantity);
   return age !== '' ? exact(tally, row, age, quantity) : interval(tally, row, from, to, quantity);
+}
+
+/** An outcome that says neither is as good as none. */
+function noOutcome(tally: FileTally, row: Row, text: string): null {
+  const message = `missing outcome, ${text} is none: it must be returned or surviving`;
+  rejectRow(refOf(tally, row), 'missing-value', 'outcome', message);
+  return null;
 }
 
 /** A survivor's age is exact, or it has an age_from and no end. */

@@ -73,7 +73,12 @@ function bounded(
   const rules = rulesOf(config, product);
   const code = outOfBounds(age, { from: 0, to: 0 }, rules.warrantyDays ?? Infinity, rules.delayDays);
   if (code === null) return age;
-  setAsideRow(refOf(tally, row), code, age.exact ? 'age' : 'age_from', outOfBoundsText(code, rules));
+  setAsideRow(
+    refOf(tally, row),
+    code,
+    age.exact ? 'age' : 'age_from',
+    outOfBoundsText(code, rules, 'surviving'),
+  );
   if (code === 'before-delay') aged.beforeDelay += age.quantity;
   return { outcome: 'surviving', from: age.from, to: age.from, exact: true, quantity: age.quantity };
 }

@@ -20,9 +20,15 @@ export function outOfBounds(
   return oldest <= delay ? 'before-delay' : null;
 }
 
-/** What a row says that is out of bounds. */
-export function outOfBoundsText(code: OutOfBounds, rules: ProductRules): string {
-  if (code === 'before-delay')
-    return `returned within the delay of ${rules.delayDays} days; counted as withdrawn`;
-  return 'returned after the end of warranty; counted as a survivor of the warranty';
+/** What is said of a row that is out of bounds. @param among what its unit counts as. */
+export function outOfBoundsText(
+  code: OutOfBounds,
+  rules: ProductRules,
+  among: 'withdrawn' | 'surviving',
+): string {
+  const found =
+    code === 'before-delay'
+      ? `returned within the delay of ${rules.delayDays} days`
+      : 'returned after the end of warranty';
+  return `${found}; its unit is censored there and counts among the ${among}`;
 }

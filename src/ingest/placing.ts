@@ -93,6 +93,6 @@ function rejectClaim(claim: Claim, message: string, field: string): void {
 }
 
 function setClaimAside(claim: Claim, code: OutOfBounds, rules: ProductRules): void {
-  const message = outOfBoundsText(code, rules);
+  const message = outOfBoundsText(code, rules, 'withdrawn');
   for (const row of claim.rows) setAsideRow(row, code, dateField(claim.kind), message);
 }

@@ -79,6 +79,6 @@ function outOfBounds(claims: readonly Claim[], products: readonly ProductRecords
   const claimed = claims.reduce((sum, { kind, quantity }) => sum + (kind === 'returned' ? quantity : 0), 0);
   const cells = products.flatMap(({ returned }) => returned);
   const outside = claimed - cells.reduce((sum, { quantity }) => sum + quantity, 0);
-  const message = `${outside} returns in the table lie within the delay or beyond warranty and are counted as withdrawn`;
+  const message = `${outside} returns in the table lie within the delay or beyond warranty; their units are censored there and count among the withdrawn`;
   return outside === 0 ? [] : [{ code: 'table-out-of-bounds', severity: 'warning', message }];
 }

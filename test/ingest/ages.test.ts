@@ -36,7 +36,7 @@ test('columns may be fewer', async () => {
 });
 
 test.each([
-  ['A,broken,1,5,,', 'bad-quantity', 'outcome'],
+  ['A,broken,1,5,,', 'missing-value', 'outcome'],
   ['A,,1,5,,', 'missing-value', 'outcome'],
   [',returned,1,5,,', 'missing-value', 'product'],
   ['A,returned,0,5,,', 'bad-quantity', 'quantity'],
@@ -60,6 +60,11 @@ test.each([
   expect(rejects).toMatchObject([{ line: 3, kind: 'rejected', code, column }]);
 });
 
+test('an unknown outcome is named with those that are allowed', async () => {
+  const { rejects } = await ingestText({ ages: `${header}A,broken,1,5,,\n` }, { asOf: null });
+  expect(rejects[0]?.message).toBe('missing outcome, broken is none: it must be returned or surviving');
+});
+
 test('returns beyond warranty or within the delay survive to their age', async () => {
   const ages = `${header}A,returned,1,100,,\nA,returned,2,,100,120\nA,returned,4,,90,120\nA,returned,1,10,,\nA,returned,1,10.5,,\nA,returned,1,,0,10\n`;
   const everyProduct = { ...plainRules, warrantyDays: 100, delayDays: 10, delayReason: 'transport' };
@@ -69,6 +74,10 @@ test('returns beyond warranty or within the delay survive to their age', async (
     '3 set-aside beyond-warranty',
     '5 set-aside before-delay',
     '7 set-aside before-delay',
+  ]);
+  expect([rejects[0]?.message, rejects[2]?.message]).toEqual([
+    'returned after the end of warranty; its unit is censored there and counts among the surviving',
+    'returned within the delay of 10 days; its unit is censored there and counts among the surviving',
   ]);
   expect(products[0]?.ages.map(({ outcome, from, quantity }) => `${outcome} ${from} ${quantity}`)).toEqual([
     'returned 10.5 1',

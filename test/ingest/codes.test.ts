@@ -208,6 +208,9 @@ test('beyond-warranty: only where no return is possible, and the unit then count
     { warrantyMonths: 1 },
   );
   expect(intake.products[0]).toMatchObject({ returned: [{ quantity: 1 }], withdrawn: [{ quantity: 1 }] });
+  expect(intake.rejects[0]?.message).toBe(
+    'returned after the end of warranty; its unit is censored there and counts among the withdrawn',
+  );
   expect((intake.products[0]?.withdrawn[0]?.from ?? 0) - (intake.products[0]?.returned[0]?.from ?? 0)).toBe(
     1,
   );
@@ -225,6 +228,9 @@ test('before-delay: only where no return is possible; too many of them forbid a 
     [1, 1],
     [1, 0],
   ]);
+  expect(intake.rejects[0]?.message).toBe(
+    'returned within the delay of 10 days; its unit is censored there and counts among the withdrawn',
+  );
   expect(intake.products[0]?.unusable).toBeNull();
   const strict = await ingestText(
     { shipments: byUnit, returns },

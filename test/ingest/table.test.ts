@@ -93,7 +93,14 @@ test('returns that the warranty forbids count as withdrawn, and a finding says s
   const rules = { ...plainRules, warrantyDays: 30 };
   const intake = await ingestText({ table: `${header}A,2026-08,100,1,2,3\n` }, { everyProduct: rules });
   expect(cells(intake, 'withdrawn')).toEqual(['A 2026-08-01 2026-10-01 3']);
-  expect(intake.findings.map(({ code }) => code)).toEqual(['table-out-of-bounds']);
+  expect(intake.findings).toEqual([
+    {
+      code: 'table-out-of-bounds',
+      severity: 'warning',
+      message:
+        '3 returns in the table lie within the delay or beyond warranty; their units are censored there and count among the withdrawn',
+    },
+  ]);
 });
 
 test('weekly and quarterly tables, a plan beside, and columns by other names', async () => {
