@@ -1,6 +1,6 @@
 import type { CandidateFit, NotForecast } from '../records.js';
 import type { Fitted } from './maximum.js';
-import { likelihoodRatioIntervals, standardErrors } from './uncertainty.js';
+import { isIdentified, likelihoodRatioIntervals, standardErrors } from './uncertainty.js';
 
 const intervalLevel = 0.95;
 
@@ -39,8 +39,12 @@ export function ruledOut(fitted: Fitted, d: number): NotForecast | null {
     const message = `${d} ${d === 1 ? 'return is' : 'returns are'} too few for ${k} ${k === 1 ? 'parameter' : 'parameters'}, at least ${k + 2} are needed`;
     return { code: 'too-few-returns', message };
   }
-  if (fitted.maximum.converged) return null;
-  return { code: 'not-converged', message: `the fit did not converge: ${fitted.maximum.reason}` };
+  if (!fitted.maximum.converged) {
+    return { code: 'not-converged', message: `the fit did not converge: ${fitted.maximum.reason}` };
+  }
+  if (isIdentified(fitted)) return null;
+  const message = 'the likelihood is flat at its maximum: the records do not determine the parameters';
+  return { code: 'not-identified', message };
 }
 
 function describe(fitted: Fitted, d: number): CandidateFit {

@@ -1,20 +1,17 @@
 import type { Config } from '../config.js';
 import { familyNamed } from '../families/index.js';
-import type {
-  CandidateFit,
-  Finding,
-  FitProduct,
-  NotForecast,
-  ParameterDraws,
-  ProductRecords,
-} from '../records.js';
+import { familyLabel } from '../families/label.js';
+import type { Finding, FitProduct, NotForecast, ParameterDraws, ProductRecords } from '../records.js';
 import { parameterDraws } from './draws.js';
 import { seedOf } from './product.js';
 import { termsOf } from './terms.js';
 
+/** AICc by which a candidate may be behind the chosen one and still stand in for it. */
+const standIn = 10;
+
 /**
  * The parameter draws that a product's intervals rest on: of the chosen candidate or, where its refits fail too often, of
- * the next best one, with a finding that says so.
+ * the next best one that is not far behind, with a finding that says which. Without one the product is not forecast.
  */
 export function drawsForForecast(
   config: Config,
@@ -23,18 +20,28 @@ export function drawsForForecast(
 ): ParameterDraws | NotForecast {
   if (fit.notForecast !== null) return fit.notForecast;
   const terms = termsOf(config, records);
-  const skipped: Finding[] = [];
-  for (const candidate of fit.candidates.filter((c) => c.ruledOut === null)) {
+  const best = fit.candidates[0]?.aicc ?? Infinity;
+  const near = fit.candidates.filter((c) => c.ruledOut === null && (c.aicc ?? Infinity) <= best + standIn);
+  const skipped: string[] = [];
+  for (const candidate of near) {
     const family = familyNamed(candidate.family);
-    const best = family.free(family.parameterNames.map((name) => candidate.parameters[name] as number));
-    const draws = parameterDraws(terms, family, best, config.draws, seedOf(config, records));
-    if (draws !== null) return { ...draws, findings: skipped };
-    skipped.push(skippedFinding(candidate));
+    const centre = family.free(family.parameterNames.map((name) => candidate.parameters[name] as number));
+    const draws = parameterDraws(terms, family, centre, config.draws, seedOf(config, records));
+    if (draws !== null) return { ...draws, findings: standInFinding(skipped, candidate.family) };
+    skipped.push(familyLabel(candidate.family));
   }
-  return { code: 'no-usable-draws', message: skipped.map((finding) => finding.message).join('; ') };
+  return {
+    code: 'no-usable-draws',
+    message: `${refused(skipped)}, and no other candidate is near enough to stand in`,
+  };
 }
 
-function skippedFinding(candidate: CandidateFit): Finding {
-  const message = `more than 1 % of the refits of the ${candidate.family} distribution to randomly weighted data failed, so no interval rests on it`;
-  return { code: 'refits-failed', severity: 'warning', message };
+function standInFinding(skipped: readonly string[], used: string): Finding[] {
+  if (skipped.length === 0) return [];
+  const message = `${refused(skipped)}; the forecast rests on the ${familyLabel(used)} distribution, the next best`;
+  return [{ code: 'refits-failed', severity: 'warning', message }];
+}
+
+function refused(families: readonly string[]): string {
+  return `more than 1 % of the refits to randomly weighted data failed for ${families.join(' and ')}, so no interval rests on it`;
 }

@@ -1,6 +1,6 @@
 import { type DayRange, daysPerMonth } from '../calendar.js';
 import { type Config, cutOffOf, rulesOf, warrantyLimit } from '../config.js';
-import type { ProductRecords } from '../records.js';
+import type { AgeGroup, ProductRecords } from '../records.js';
 
 /** Units that share one kernel: the chance, by bin of age, that a return at that age is compatible with what was seen. */
 export interface Observed {
@@ -12,10 +12,18 @@ export interface Observed {
   readonly open: boolean;
 }
 
-/** Bins of one month (of one week where the periods are weeks) that cover every age at risk. */
+/**
+ * Bins of one month (of one week where the periods are weeks) that cover every age at risk; where the records know the day,
+ * quarters of them at first, since a density that starts steeply is not constant over a month.
+ */
 export function monthlyEdges(config: Config, records: ProductRecords): number[] {
   const width = config.period === 'week' ? 7 : daysPerMonth;
-  return Array.from({ length: Math.ceil(oldestAtRisk(config, records) / width) + 1 }, (_, i) => i * width);
+  const whole = Array.from(
+    { length: Math.ceil(oldestAtRisk(config, records) / width) + 1 },
+    (_, i) => i * width,
+  );
+  if (records.resolution !== 'day' || whole.length < 3) return whole;
+  return [...Array.from({ length: 8 }, (_, i) => (i * width) / 4), ...whole.slice(2)];
 }
 
 /** The oldest age at which a unit was still at risk. */
@@ -55,9 +63,9 @@ export function fromCohorts(config: Config, records: ProductRecords, edges: read
 }
 
 /** Exact ages sit at the end of their bin; a survivor of that age is at risk in it. */
-export function fromAges(records: ProductRecords, edges: readonly number[]): Observed[] {
+export function fromAges(ages: readonly AgeGroup[], edges: readonly number[]): Observed[] {
   const bin = (age: number) => edges.indexOf(age) - 1;
-  return records.ages.map((group) => {
+  return ages.map((group) => {
     if (group.outcome === 'surviving') {
       return { units: group.quantity, first: bin(group.to) + 1, kernel: [], open: true };
     }
@@ -68,8 +76,8 @@ export function fromAges(records: ProductRecords, edges: readonly number[]): Obs
 }
 
 /** Every age that occurs. */
-export function ageEdges(records: ProductRecords): number[] {
-  return [...new Set([0, ...records.ages.flatMap((group) => [group.from, group.to])])].sort((a, b) => a - b);
+export function ageEdges(ages: readonly AgeGroup[]): number[] {
+  return [...new Set([0, ...ages.flatMap((group) => [group.from, group.to])])].sort((a, b) => a - b);
 }
 
 function observe(
@@ -80,10 +88,12 @@ function observe(
   chance: (a: number, b: number) => number,
   open: boolean,
 ): Observed {
-  const bins = edges.length - 1;
-  const width = (edges[1] as number) - (edges[0] as number);
-  const first = Math.max(0, Math.min(bins - 1, Math.floor(from / width)));
-  const end = Math.max(first, Math.min(bins, Math.ceil(to / width)));
+  const first = Math.max(
+    0,
+    edges.findLastIndex((edge, i) => edge <= from && i < edges.length - 1),
+  );
+  const after = edges.findIndex((edge, i) => edge >= to && i >= first);
+  const end = after < 0 ? edges.length - 1 : after;
   const kernel = Array.from({ length: end - first }, (_, i) =>
     Math.max(0, chance(edges[first + i] as number, edges[first + i + 1] as number)),
   );

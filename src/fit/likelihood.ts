@@ -5,15 +5,20 @@ import type { Surface } from '../math/maximise.js';
 import type { AgeGroup } from '../records.js';
 import type { LaidTerms, Terms } from './terms.js';
 
-const narrowest = 0.01;
+/** A Weibull shape between 0.01 and 100 where ages are grouped; beyond it no grid of ages resolves the distribution. */
+const groupedSpread = { narrowest: 0.01, widest: 100 };
+/** Exact ages need no grid. */
+const exactSpread = { narrowest: 1e-5, widest: 100 };
+/** Free coordinates are logs of ages and of spreads; beyond this their exponentials overflow. */
+const farthest = 650;
 
 /** The log likelihood of SPEC 6.2 in the free coordinates of a family; `counts` may be replaced between evaluations. */
 export interface LogLikelihood extends Surface {
   /** Units (or random weights) behind each term, in the order of the terms. */
   readonly counts: Float64Array;
   /**
-   * Where a maximum may lie. A spread of log age below 0.01 (a Weibull shape of 100) is narrower than any grid of ages
-   * resolves; a likelihood that rises to there has no maximum worth the name.
+   * Where a maximum may lie: spreads of log age that the data can resolve, numbers that can be computed. A likelihood that
+   * rises to the edge has no maximum worth the name.
    */
   readonly inside: (point: Float64Array) => boolean;
   /** The gradient of the log of each term for one unit: k numbers a term. */
@@ -69,8 +74,11 @@ export function logLikelihood(terms: Terms, laid: LaidTerms, family: Family): Lo
     eachTerm(point, (term) => all.set(jet.subarray(1, 1 + k), term * k));
     return all;
   };
-  const inside = (point: Float64Array) =>
-    family.spread(point) > narrowest && point.every((x) => Math.abs(x) <= 80);
+  const { narrowest, widest } = laid.returned.count > 0 ? groupedSpread : exactSpread;
+  const inside = (point: Float64Array) => {
+    const spread = family.spread(point);
+    return spread > narrowest && spread < widest && point.every((x) => Math.abs(x) <= farthest);
+  };
   return { size: k, gradient, hessian, counts, inside, evaluate, scores };
 }
 

@@ -1,7 +1,8 @@
-import type { Config } from '../config.js';
+import { type Config, rulesOf } from '../config.js';
 import { normalQuantile } from '../math/chi-square.js';
 import type { NonparametricPoint, ProductRecords } from '../records.js';
 import { ageEdges, fromAges, fromCohorts, monthlyEdges, type Observed, oldestAtRisk } from './kernels.js';
+import { cappedAges } from './terms.js';
 
 const level = 0.95;
 
@@ -12,12 +13,14 @@ const level = 0.95;
  * units at risk of the last step.
  */
 export function nonparametricEstimate(config: Config, records: ProductRecords): NonparametricPoint[] {
-  const dated = records.resolution !== 'age';
-  const edges = dated ? monthlyEdges(config, records) : ageEdges(records);
-  const oldest = dated ? oldestAtRisk(config, records) : Infinity;
-  const observed = dated ? fromCohorts(config, records, edges) : fromAges(records, edges);
-  if (edges.length < 2) return [];
-  return pointsOf(edges, oldest, selfConsistent(observed, edges.length - 1));
+  if (records.resolution === 'age') {
+    const ages = cappedAges(records.ages, rulesOf(config, records.product).warrantyDays ?? Infinity);
+    const edges = ageEdges(ages);
+    return pointsOf(edges, Infinity, selfConsistent(fromAges(ages, edges), edges.length - 1));
+  }
+  const edges = monthlyEdges(config, records);
+  const counts = selfConsistent(fromCohorts(config, records, edges), edges.length - 1);
+  return pointsOf(edges, oldestAtRisk(config, records), counts);
 }
 
 interface BinCounts {

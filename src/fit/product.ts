@@ -1,8 +1,10 @@
+import { daysPerMonth } from '../calendar.js';
 import { type Config, cutOffOf, rulesOf } from '../config.js';
 import { familyNamed } from '../families/index.js';
+import { familyLabel } from '../families/label.js';
 import type { CandidateFit, Curve, FitProduct, NotForecast, ProductRecords } from '../records.js';
 import { rankCandidates } from './choice.js';
-import { leavesEstimate, steepShape } from './findings.js';
+import { betterRuledOut, leavesEstimate, ruledOutAhead, steepShape } from './findings.js';
 import { fitFamilies, typicalAges } from './maximum.js';
 import { nonparametricEstimate } from './nonparametric.js';
 import { withChosenShares } from './selection.js';
@@ -32,7 +34,11 @@ export function fitProduct(config: Config, records: ProductRecords): FitProduct 
     warrantyDays: rules.warrantyDays,
     chosen: notForecast === null ? (candidates[0]?.family ?? null) : null,
     notForecast,
-    findings: [...steepShape(candidates), ...leavesEstimate(candidates[0], nonparametric, rules.delayDays)],
+    findings: [
+      ...steepShape(candidates),
+      ...ruledOutAhead(candidates),
+      ...leavesEstimate(candidates[0], nonparametric, rules.delayDays, roughUntil(records)),
+    ],
     candidates,
     nonparametric,
     curves: candidates
@@ -63,7 +69,7 @@ function reasonNot(
       'no returns in the records, so nothing can be fitted; forecast it by hand or with a similar product';
     return { code: 'no-returns', message };
   }
-  if (candidates.some((candidate) => candidate.ruledOut === null)) return null;
+  if (candidates.some((candidate) => candidate.ruledOut === null)) return misleading(candidates);
   const few = candidates.every((candidate) => candidate.ruledOut?.code === 'too-few-returns');
   const reasons = [...new Set(candidates.map((candidate) => candidate.ruledOut?.message))].join('; ');
   return few
@@ -72,6 +78,22 @@ function reasonNot(
         message: `only ${terms.returns} ${terms.returns === 1 ? 'return' : 'returns'}, too few for any candidate; wait for more or record similar products as one`,
       }
     : { code: 'no-usable-fit', message: `every candidate is ruled out: ${reasons}` };
+}
+
+/** A candidate that was ruled out follows the records so much better that a forecast from the others would mislead. */
+function misleading(candidates: readonly CandidateFit[]): NotForecast | null {
+  const better = betterRuledOut(candidates);
+  if (better === null || !better.forbids) return null;
+  const { candidate, by } = better;
+  const message =
+    `the ${familyLabel(candidate.family)} distribution was ruled out (${candidate.ruledOut?.message}), and what is left follows the ` +
+    `records far worse, by ${by.toFixed(1)} in log likelihood; look at the records, or wait for more of them`;
+  return { code: 'best-fit-ruled-out', message };
+}
+
+/** Two months where ages come from dates, which know them to the cohort and the cell only. */
+function roughUntil(records: ProductRecords): number {
+  return records.resolution === 'age' ? 0 : 2 * daysPerMonth;
 }
 
 function unitCounts(

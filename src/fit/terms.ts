@@ -85,11 +85,18 @@ function count(into: Map<string, [Window, number]>, window: Window, quantity: nu
   else known[1] += quantity;
 }
 
-/** Ages less the delay; survivors are cut at the warranty limit, and those younger than the delay say nothing. */
+/** Ages cut at the warranty limit: beyond it nothing is counted, so an interval across it ends there. */
+export function cappedAges(ages: readonly AgeGroup[], limit: number): AgeGroup[] {
+  return ages.map((group) =>
+    group.exact && group.outcome === 'returned'
+      ? group
+      : { ...group, from: Math.min(group.from, limit), to: Math.min(group.to, limit) },
+  );
+}
+
+/** Ages less the delay; survivors younger than the delay say nothing. */
 function informativeAges(ages: readonly AgeGroup[], delay: number, limit: number): AgeGroup[] {
-  const shifted = ages.map((group) => {
-    const to = group.outcome === 'surviving' ? Math.min(group.to, limit) : group.to;
-    return { ...group, from: Math.max(0, Math.min(group.from, to) - delay), to: to - delay };
-  });
-  return shifted.filter((group) => group.outcome === 'returned' || group.to > 0);
+  return cappedAges(ages, limit)
+    .map((group) => ({ ...group, from: Math.max(0, group.from - delay), to: group.to - delay }))
+    .filter((group) => group.outcome === 'returned' || group.to > 0);
 }

@@ -6,17 +6,28 @@ import type { Fitted } from './maximum.js';
 
 /** Standard errors of the parameters from the inverse observed information, by the delta method; null when it has none. */
 export function standardErrors(fitted: Fitted): (number | null)[] {
-  const { likelihood, maximum, family } = fitted;
+  const slopes = fitted.family.slopes(fitted.maximum.point);
+  return freeErrors(fitted).map((error, i) =>
+    error === null ? null : Math.abs(slopes[i] as number) * error,
+  );
+}
+
+/** True when the observed information determines every parameter, if only within a factor of e^100. */
+export function isIdentified(fitted: Fitted): boolean {
+  return freeErrors(fitted).every((error) => error !== null && error < 100);
+}
+
+/** Standard errors of the free coordinates. */
+function freeErrors({ likelihood, maximum }: Fitted): (number | null)[] {
   const k = likelihood.size;
   likelihood.evaluate(maximum.point);
   const covariance = invertPositive(
     likelihood.hessian.map((entry) => -entry),
     k,
   );
-  return family.slopes(maximum.point).map((slope, i) => {
-    const variance = covariance?.[i * k + i];
-    return variance === undefined ? null : Math.abs(slope) * Math.sqrt(variance);
-  });
+  return Array.from({ length: k }, (_, i) =>
+    covariance === null ? null : Math.sqrt(covariance[i * k + i] as number),
+  );
 }
 
 /**
@@ -25,11 +36,10 @@ export function standardErrors(fitted: Fitted): (number | null)[] {
  */
 export function likelihoodRatioIntervals(fitted: Fitted, level: number): ParameterInterval[] {
   const drop = 0.5 * chiSquareQuantile(level, 1);
-  const errors = standardErrors(fitted);
+  const errors = freeErrors(fitted);
   const slopes = fitted.family.slopes(fitted.maximum.point);
   return slopes.map((slope, i) => {
-    const error = errors[i];
-    const spread = error === null || error === undefined ? 1 : error / Math.abs(slope);
+    const spread = errors[i] ?? 1;
     const ends = [-1, 1].map((side) => profileEnd(fitted, i, side, spread, drop));
     const [lower, upper] = (slope > 0 ? ends : ends.reverse()) as [number | null, number | null];
     return { level, lower, upper, method: 'likelihood-ratio' };
@@ -41,6 +51,7 @@ function profileEnd(fitted: Fitted, i: number, side: number, spread: number, dro
   const { likelihood, maximum, family } = fitted;
   const fixed = Array.from({ length: likelihood.size }, (_, j) => j === i);
   const wanted = Math.sqrt(2 * drop);
+  const near = Math.max(1e-8, 4e-16 * Math.abs(maximum.value));
   let from = maximum.point;
   let nearest = 0;
   let farthest = Infinity;
@@ -53,9 +64,9 @@ function profileEnd(fitted: Fitted, i: number, side: number, spread: number, dro
     if (!profile.converged || root > wanted) farthest = Math.min(farthest, distance);
     else nearest = Math.max(nearest, distance);
     if (profile.converged) from = profile.point;
-    if (profile.converged && Math.abs(root - wanted) < 1e-8)
+    if (profile.converged && Math.abs(root - wanted) < near)
       return family.parameters(profile.point)[i] ?? null;
-    if (distance > 60) return null;
+    if (distance > 600) return null;
     const slope = (-side * (likelihood.gradient[i] as number)) / root;
     distance = nextDistance(distance + (wanted - root) / slope, distance, nearest, farthest);
     if (farthest - nearest < 1e-12 * farthest) return null;

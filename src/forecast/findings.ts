@@ -1,18 +1,28 @@
 import type { Config } from '../config.js';
 import { intervalKeys } from '../quantiles.js';
-import type { CandidateForecast, Finding, ForecastPeriod } from '../records.js';
+import type { CandidateForecast, Finding, ForecastPeriod, PredictedCount } from '../records.js';
 
 /** Weight of the candidates outside the interval from which on it is worth a warning. */
 const noticedWeight = 0.1;
 
-/** The mean of the predictive distribution and the plug-in figure differ by more than 5 % over the horizon (SPEC 5). */
-export function plugInFinding(periods: readonly ForecastPeriod[]): Finding[] {
-  const last = periods.at(-1)?.cumulative;
-  if (last === undefined || Math.abs(last.expected - last.plugIn) <= 0.05 * last.plugIn) return [];
-  const percent = Math.round(100 * (last.expected / last.plugIn - 1));
+/** Mean of the predictive distribution and plug-in figure differ by more than 5 % (SPEC 5), over the horizon or until warranty ends. */
+export function plugInFinding(
+  periods: readonly ForecastPeriod[],
+  untilWarrantyEnds: PredictedCount | null,
+): Finding[] {
+  const sums = [
+    { name: 'over the horizon', count: periods.at(-1)?.cumulative },
+    { name: 'until warranty ends', count: untilWarrantyEnds },
+  ];
+  const apart = sums.flatMap(({ name, count }) => {
+    const percent = count?.plugIn ? 100 * (count.expected / count.plugIn - 1) : 0;
+    const side = percent < 0 ? 'below' : 'above';
+    return Math.abs(percent) > 5 ? [`${name} ${Math.round(Math.abs(percent))} % ${side}`] : [];
+  });
+  if (apart.length === 0) return [];
   const message =
-    `the mean over the uncertainty of the parameters is ${Math.abs(percent)} % ${percent < 0 ? 'below' : 'above'} the forecast at their best values, ` +
-    'because few returns leave the parameters wide open';
+    `the mean over the uncertainty of the parameters differs from the forecast at their best values: ${apart.join(', ')}; ` +
+    'the returns leave the parameters wide open';
   return [{ code: 'mean-differs-from-plug-in', severity: 'note', message }];
 }
 

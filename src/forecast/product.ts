@@ -1,5 +1,7 @@
 import { parseIsoDate } from '../calendar.js';
 import { type Config, type ProductRules, rulesOf } from '../config.js';
+import type { Precision } from '../exposure/grid.js';
+import type { Family } from '../families/family.js';
 import { familyNamed } from '../families/index.js';
 import type {
   CandidateFit,
@@ -63,20 +65,21 @@ export function forecastProduct(
   const family = familyNamed(draws.family);
   const best = freeOf(fit.candidates.find((c) => c.family === family.name) as CandidateFit);
   const plugIn = expectation(exact, exact.chances(family.jetsAt(best)));
-  const predicted = predictiveCounts(exposedOf(config, records, steps, 'draw'), draws);
+  const predicted = predictiveCounts(exposedOf(config, records, steps, precisionFor(family, best)), draws);
   const periods = periodsOf(config, records, steps, plugIn, predicted);
+  const until = exact.limited ? untilWarrantyEnds(config, plugIn, predicted) : null;
   const product: ForecastProduct = {
     ...shared,
     chosen: family.name,
     notForecast: null,
     method: methodOf(draws, predicted),
     periods,
-    untilWarrantyEnds: exact.limited ? untilWarrantyEnds(config, plugIn, predicted) : null,
+    untilWarrantyEnds: until,
     history: historyOf(config, records, { family, free: best }),
     ifRejectedWereReal: ifRejectedWereReal(records, fit, periods),
     findings: [
       ...draws.findings,
-      ...plugInFinding(periods),
+      ...plugInFinding(periods, until),
       ...costFinding(shared.currency, periods),
       ...choiceFinding(config, shared.byCandidate, family.name, periods),
     ],
@@ -97,10 +100,15 @@ function exposedOf(
   config: Config,
   records: ProductRecords,
   steps: readonly Step[],
-  precision: 'fit' | 'draw',
+  precision: Precision,
 ): Exposed {
   if (records.resolution === 'age') return exposedAges(config, records, steps.length, config.ageStep ?? 0);
   return exposedCohorts(config, records, steps as Column[], precision);
+}
+
+/** A steep distribution needs the fine grid for its counts too. */
+function precisionFor(family: Family, best: Float64Array): Precision {
+  return family.spread(best) < 0.2 ? 'fit' : 'draw';
 }
 
 function freeOf(candidate: CandidateFit): Float64Array {

@@ -28,7 +28,7 @@ export interface MaximiseOptions {
   readonly tolerance?: number;
   /** Default 100. */
   readonly maxIterations?: number;
-  /** Where a maximum may lie; default every coordinate within [−80, 80]. */
+  /** Where a maximum may lie; default every coordinate within [−650, 650]. */
   readonly inside?: (point: Float64Array) => boolean;
   /**
    * Takes the last step without evaluating at its end; the value is then the quadratic prediction, good to the square of
@@ -150,7 +150,7 @@ function walk(
 }
 
 function withinBounds(point: Float64Array): boolean {
-  return point.every((x) => Math.abs(x) <= 80);
+  return point.every((x) => Math.abs(x) <= 650);
 }
 
 function freeCoordinates(size: number, fixed: readonly boolean[] | undefined): number[] {

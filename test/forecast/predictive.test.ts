@@ -147,6 +147,6 @@ test('a mean that differs from the plug-in figure by more than a twentieth is no
   expect(Math.abs(percent)).toBeGreaterThan(5);
   const finding = product.findings.find((f) => f.code === 'mean-differs-from-plug-in');
   expect(finding?.message).toContain(
-    `is ${Math.abs(percent)} % ${percent < 0 ? 'below' : 'above'} the forecast`,
+    `over the horizon ${Math.abs(percent)} % ${percent < 0 ? 'below' : 'above'}`,
   );
 });
