@@ -1,5 +1,6 @@
 /** The committed reference numbers, typed. README.md beside says where they come from and how they are recomputed. */
 import { readFileSync } from 'node:fs';
+import type { PeriodKind } from '../../src/calendar.js';
 import type { AgeGroup } from '../../src/records.js';
 
 export type Parameters = Readonly<Record<string, number>>;
@@ -123,6 +124,43 @@ export interface CellCase {
 
 export function loadCells(): readonly CellCase[] {
   return readJson<{ readonly cases: readonly CellCase[] }>('cells.json').cases;
+}
+
+/** Days [from, to) and units shipped. */
+type StoredCohort = readonly [from: number, to: number, shipped: number];
+type StoredCell = readonly [cohort: number, from: number, to: number, quantity: number];
+
+/** Records with a warranty limit, and what follows from them at given parameters. Ranges are half-open day numbers. */
+export interface WarrantyScenario {
+  readonly name: string;
+  readonly period: PeriodKind;
+  readonly asOf: string;
+  readonly warrantyMonths: number | null;
+  readonly warrantyDays: number | null;
+  readonly delayDays: number;
+  readonly horizon: number;
+  readonly cohorts: readonly StoredCohort[];
+  readonly returned: readonly StoredCell[];
+  readonly withdrawn: readonly StoredCell[];
+  readonly planned: readonly StoredCohort[];
+  /** The periods after and before the cut-off, to which `expected` and `planned`, and `fitted`, belong. */
+  readonly ahead: readonly (readonly [from: number, to: number])[];
+  readonly past: readonly (readonly [from: number, to: number])[];
+  readonly answers: readonly {
+    readonly family: string;
+    readonly parameters: Parameters;
+    readonly logLikelihood: number;
+    readonly expected: readonly number[];
+    readonly planned: readonly number[];
+    readonly untilWarrantyEnds: number;
+    /** Of the count at these very parameters. */
+    readonly untilWarrantyEndsVariance: number;
+    readonly fitted: readonly number[];
+  }[];
+}
+
+export function loadWarranty(): readonly WarrantyScenario[] {
+  return readJson<{ readonly scenarios: readonly WarrantyScenario[] }>('warranty.json').scenarios;
 }
 
 interface StoredDataSet extends Omit<DataSet, 'ages'> {
