@@ -1,6 +1,7 @@
 import { compareText } from '../csv.js';
 import { type Fault, UserError } from '../errors.js';
 import type { FileAccount, Finding, Intake, RejectRow } from '../records.js';
+import { codeWords, grouped } from './code-words.js';
 
 /**
  * Refuses records of which too much was rejected in some file.
@@ -19,11 +20,11 @@ export function fileFindings(files: readonly FileAccount[], rejects: readonly Re
   return files.flatMap((file) => {
     const findings: Finding[] = [];
     if (file.rejected > 0) {
-      const message = `${file.rejected} of ${file.read} rows of ${file.file} were rejected: ${codesOf(file, rejects, 'rejected')}`;
+      const message = `${rowsOf(file.rejected, file)} rejected: ${wordsOf(file, rejects, 'rejected')}`;
       findings.push({ code: 'rows-rejected', severity: 'warning', message });
     }
     if (file.setAside > 0) {
-      const message = `${file.setAside} of ${file.read} rows of ${file.file} were set aside: ${codesOf(file, rejects, 'set-aside')}`;
+      const message = `${rowsOf(file.setAside, file)} set aside: ${wordsOf(file, rejects, 'set-aside')}`;
       findings.push({ code: 'rows-set-aside', severity: 'note', message });
     }
     if (file.read === 0) {
@@ -45,17 +46,30 @@ function tooManyRejected(file: FileAccount, rejects: readonly RejectRow[], share
   return {
     code: 'too-many-rejected',
     file: file.file,
-    message: `invalid records: ${file.rejected} of ${file.read} rows were rejected (${codes})${example}`,
+    message: `invalid records: ${grouped(file.rejected)} of ${grouped(file.read)} rows were rejected (${codes})${example}`,
     remedy: `correct the rows that rejects.csv lists, or raise maxRejectShare (${share}) if they may be missed`,
   };
 }
 
-function codesOf(file: FileAccount, rejects: readonly RejectRow[], kind: RejectRow['kind']): string {
-  const own = new Set(
-    rejects.filter((row) => row.file === file.file && row.kind === kind).map((row) => row.code),
+/** `3 of 1,221 rows of returns.csv`. */
+function rowsOf(rows: number, { read, file }: FileAccount): string {
+  return `${grouped(rows)} of ${grouped(read)} ${read === 1 ? 'row' : 'rows'} of ${file}`;
+}
+
+/** `1 with a missing value (missing-value), 2 …`. */
+function wordsOf(file: FileAccount, rejects: readonly RejectRow[], kind: RejectRow['kind']): string {
+  const words = codesIn(file, rejects, kind).map(
+    (code) => `${grouped(file.codes[code] ?? 0)} ${codeWords[code]} (${code})`,
   );
-  return [...own]
-    .sort(compareText)
-    .map((code) => `${code} ${file.codes[code]}`)
-    .join(', ');
+  return words.join(', ');
+}
+
+function codesOf(file: FileAccount, rejects: readonly RejectRow[], kind: RejectRow['kind']): string {
+  const counts = codesIn(file, rejects, kind).map((code) => `${code} ${file.codes[code]}`);
+  return counts.join(', ');
+}
+
+function codesIn(file: FileAccount, rejects: readonly RejectRow[], kind: RejectRow['kind']) {
+  const own = rejects.filter((row) => row.file === file.file && row.kind === kind).map((row) => row.code);
+  return [...new Set(own)].sort(compareText);
 }
