@@ -48,6 +48,14 @@ export function candidateRows(fit: FitProduct, forecasts: readonly CandidateFore
   }));
 }
 
+/** `95 %`, the level of the intervals of the parameters; null where there is none. */
+export function parameterLevel(fit: FitProduct): string | null {
+  const levels = fit.candidates.flatMap((candidate) =>
+    Object.values(candidate.intervals).map((interval) => interval.level),
+  );
+  return levels[0] === undefined ? null : percentText(levels[0]);
+}
+
 function same(a: Candidate, b: Candidate): boolean {
   return a.family === b.family && (a.atRisk === null) === (b.atRisk === null);
 }
@@ -63,7 +71,6 @@ function parameterTexts(candidate: CandidateFit, ageUnit: string) {
       value: measureText(value),
       unit: parameterUnit(candidate.family, name, plural(ageUnit)),
       interval: interval === undefined ? null : boundsText(interval),
-      level: interval === undefined ? null : percentText(interval.level),
     };
   });
 }

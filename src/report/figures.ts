@@ -11,12 +11,13 @@ export interface Figure {
   /** How long the longest value is: `short` up to 9 characters, `long` up to 15, else `longest`. */
   readonly size: 'short' | 'long' | 'longest';
   readonly detail: string;
-  readonly money: boolean;
+  /** Whether it gets a row of its own where the page is narrow. */
+  readonly broad: boolean;
 }
 
 /** A count to come with its interval at a level. */
 export function countFigure(count: PredictedCount, level: number, label: string): Figure {
-  return figure(label, [expectedText(count.expected)], betweenText(count, level), false);
+  return figure(label, [expectedText(count.expected)], betweenText(count, level));
 }
 
 /**
@@ -33,13 +34,14 @@ export function costFigure(
   const without =
     costless.length === 0 ? '' : `; without the returns of ${listed(costless)} for which no cost is set`;
   const detail = `expected returns at the cost per return in force${without}`;
-  return [figure(`expected cost ${over}`, values, detail, true)];
+  return [figure(`expected cost ${over}`, values, detail)];
 }
 
-function figure(label: string, values: readonly string[], detail: string, money: boolean): Figure {
+function figure(label: string, values: readonly string[], detail: string): Figure {
   const longest = Math.max(...values.map((value) => value.length));
   const size = longest <= 9 ? 'short' : longest <= 15 ? 'long' : 'longest';
-  return { label: label.charAt(0).toUpperCase() + label.slice(1), values, size, detail, money };
+  const broad = size !== 'short';
+  return { label: label.charAt(0).toUpperCase() + label.slice(1), values, size, detail, broad };
 }
 
 /** `A`, `A and B`, `A, B, C and 9 others`. */

@@ -2,7 +2,7 @@
 import { rulesOf } from '../config.js';
 import type { FileAccount, Finding, ForecastPeriod, ForecastProduct, ForecastTotal } from '../records.js';
 import { censorsReturns, productEntries } from './account.js';
-import { candidateRows } from './candidates.js';
+import { candidateRows, parameterLevel } from './candidates.js';
 import { curvesChart } from './curves-chart.js';
 import { dateText } from './dates.js';
 import { forecastChart } from './forecast-chart.js';
@@ -89,6 +89,7 @@ export function productDetail(input: ReportInput, parts: ProductParts) {
     standing: words.standing,
     untilWarranty: (forecast?.byCandidate ?? []).some((candidate) => candidate.untilWarrantyEnds !== null),
     horizonWords: horizonWords(input, words, forecast),
+    parameterLevel: fit === null ? null : parameterLevel(fit),
     compared: (forecast?.byCandidate ?? []).length > 0,
     entries: productEntries(table, rulesOf(input.settings, table.product), input.table),
     method: forecast?.method ?? null,

@@ -125,6 +125,19 @@ describe('what is missing is said', () => {
     expect(text).not.toMatch(/as of|November|Until warranty ends/);
   });
 
+  it('says what is missing where ages have no step', () => {
+    const ages = agesInput();
+    const text = page(
+      'index.html',
+      renderReport({ ...ages, settings: { ...ages.settings, ageStep: null }, forecast: null }, templates, {
+        singleFile: true,
+      }),
+    );
+    expect(text).toContain('No forecast: <code>ageStep</code>');
+    expect(text).not.toContain('The intervals come from repeated draws');
+    expect(text).not.toContain('without interval');
+  });
+
   it('refuses templates that lack a part', () => {
     const { 'style.css': _, ...rest } = templates;
     expect(() => renderReport(input, rest, { singleFile: true })).toThrow('missing template style.css');

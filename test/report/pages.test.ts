@@ -168,6 +168,34 @@ describe('numbers on the page', () => {
     }
   });
 
+  it('puts every warning of a product where the page that is mailed shows its headline', () => {
+    const index = page('index.html');
+    const at = `id="findings-${slugOf('Spring 5', null)}"`;
+    expect(index).toContain(`href="#findings-${slugOf('Spring 5', null)}">see warning</a>`);
+    const list = index.slice(index.indexOf(at)).split('</ul>')[0];
+    expect(list).toContain('<strong>warning:</strong> only 9 returns; the interval is wide');
+    expect(index.split('see warning')).toHaveLength(2);
+    for (const text of [productPage('Spring 5'), page('index.html', single)])
+      expect(text.split('only 9 returns')).toHaveLength(2);
+    expect(productPage('Spring 5').indexOf('only 9 returns')).toBeLessThan(
+      productPage('Spring 5').indexOf('<main>'),
+    );
+  });
+
+  it('gives a sum a column of cost for each currency, that adds up', () => {
+    const index = page('index.html');
+    const rows = tableRows(index.slice(index.indexOf('id="table-total-title"')), 'numbers forecast');
+    for (const [i, period] of forecast.total.periods.entries()) {
+      const amounts = rows[i]?.slice(-2).map((text) => text.replaceAll(',', '').split('\u00a0'));
+      expect(amounts?.map(([currency]) => currency)).toEqual(['CHF', 'EUR']);
+      for (const [currency, amount] of amounts ?? []) {
+        const parts = forecast.products.filter((product) => product.currency === currency);
+        const cost = parts.reduce((sum, product) => sum + (product.periods[i]?.expectedCost ?? 0), 0);
+        expect(Math.abs(Number(amount) - cost), period.period).toBeLessThanOrEqual(0.5);
+      }
+    }
+  });
+
   it('lists each currency of the cost apart', () => {
     expect(page('index.html')).toMatch(/<span>CHF\u00a0[\d,]+<\/span> <span>EUR\u00a0[\d,]+<\/span>/);
   });

@@ -24,6 +24,26 @@ describe('numbers for people', () => {
     expect(numbers.moneyText(21_402.7, 'CHF')).toBe('CHF\u00a021,403');
   });
 
+  it('shows an amount that was set as it was set', () => {
+    const rates = [1138.5, 185, 0.125, 11.9].map((amount) => numbers.rateText(amount, 'EUR'));
+    expect(rates).toEqual(['EUR\u00a01,138.50', 'EUR\u00a0185', 'EUR\u00a00.125', 'EUR\u00a011.90']);
+  });
+
+  it('shows a column in one precision', () => {
+    expect([8.04, 1200.4, null].map(numbers.expectedColumn([8.04, 1200.4, null]))).toEqual([
+      '8.0',
+      '1,200.4',
+      '–',
+    ]);
+    expect([12.5, 1200.4].map(numbers.expectedColumn([12.5, 1200.4]))).toEqual(['13', '1,200']);
+    const money = numbers.moneyColumn([38.5, 1200.4]);
+    expect([money(38.5, 'EUR'), money(1200.4, 'EUR')]).toEqual(['EUR\u00a038.50', 'EUR\u00a01,200.40']);
+    expect([0.0005, 0.123].map(numbers.percentColumn([0.0005, 0.123]))).toEqual([
+      '0.1\u00a0%',
+      '12.3\u00a0%',
+    ]);
+  });
+
   it('shows shares to three digits and tiny weights as a bound', () => {
     expect(numbers.percentText(0.8)).toBe('80\u00a0%');
     expect(numbers.percentText(0.000412)).toBe('0.0412\u00a0%');
