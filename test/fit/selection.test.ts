@@ -29,7 +29,7 @@ test.each(families)(
   (one) => {
     const { [one.name]: share, ...others } = sharesOf(one.quantile);
     expect(share).toBeGreaterThan(Math.max(...Object.values(others)));
-  expect(share).toBeGreaterThan(0.5);
+    expect(share).toBeGreaterThan(0.5);
     expect(others.exponential).toBe(0);
   },
 );
