@@ -9,6 +9,7 @@ import { begin, type Start } from './begin.js';
 import { deliver } from './deliver.js';
 import { type NodeEffects, nodeEffects } from './effects.js';
 import { openOutput, placeOf, repairOutput, writeRejected } from './output.js';
+import { warningsText } from './print/warnings.js';
 import type { Scope } from './scope.js';
 import { mainDocument, resultText, summaryText } from './show.js';
 import { startStopwatch } from './stopwatch.js';
@@ -49,6 +50,7 @@ export async function runCommand(invocation: Invocation, session: Session): Prom
       ? jsonText(mainDocument(invocation, result, run))
       : resultText(invocation, out, result, terminal.width),
   );
+  terminal.mention(warningsText(result, invocation.command === 'run' || invocation.command === 'report'));
   if (missing.length > 0) terminal.tell(missingText(missing));
   terminal.mention(summaryText(invocation, out, result, missing.length));
   return missing.length > 0 ? exitCodes.someNotForecast : exitCodes.done;

@@ -177,7 +177,7 @@ function untilWarrantyEnds(config: Config, plugIn: Expectation, { counts, column
 
 function methodOf(draws: ParameterDraws, { draws: count }: PredictiveCounts): ForecastMethod {
   const assumes =
-    'the return rate by age does not change with the calendar, and units return independently of one another';
+    'the return rate by age does not change with the calendar, units return independently of one another, and the chosen family is the right one';
   return { draws: count, parameters: draws.kind, restarted: draws.restarted, counts: 'multinomial', assumes };
 }
 

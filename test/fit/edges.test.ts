@@ -8,7 +8,7 @@ import { drawsForForecast } from '../../src/fit/drawn.js';
 import { fitProduct } from '../../src/fit/product.js';
 import { binomialDraw } from '../../src/math/binomial.js';
 import { randomStream } from '../../src/math/random.js';
-import type { AgeGroup, FitProduct } from '../../src/records.js';
+import type { AgeGroup, CandidateFit, FitProduct } from '../../src/records.js';
 import { agedProduct, configWith, datedProduct } from '../support/data.js';
 import { near } from '../support/near.js';
 
@@ -124,7 +124,7 @@ test('an interval across the warranty limit ends there: F(100 − 5) − F(90 �
   const ages = [10, 30, 50, 70].map((age) => group('returned', age, age, 2));
   const more = [...ages, group('returned', 90, 120, 3), group('surviving', 100, 100, 40)];
   const fit = fitProduct(configWith({ everyProduct: rules }), agedProduct('W', more));
-  const { logLikelihood, parameters } = find(fit, 'weibull') ?? { logLikelihood: 0, parameters: {} };
+  const { logLikelihood, parameters } = find(fit, 'weibull') as CandidateFit;
   const family = familyNamed('weibull');
   const life = family.at(family.free(family.parameterNames.map((name) => parameters[name] as number)));
   const exact = [10, 30, 50, 70].reduce((sum, age) => sum + 2 * life.logDensity(age - 5), 0);
