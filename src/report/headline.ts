@@ -109,11 +109,12 @@ function warrantySentence({ untilWarrantyEnds, levels, asOf }: HeadlineInput): r
   ];
 }
 
-function plannedSentence({ periods }: HeadlineInput): readonly string[] {
+function plannedSentence({ periods, untilWarrantyEnds }: HeadlineInput): readonly string[] {
   const planned = periods.reduce((sum, period) => sum + period.planned.expected, 0);
   if (planned === 0) return [];
+  const none = untilWarrantyEnds === null ? '' : ' and none of those until warranty ends';
   return [
-    `Planned shipments, taken as certain, bring ${expectedText(planned)} of the returns in the horizon.`,
+    `Planned shipments, taken as certain, bring ${expectedText(planned)} of the returns in the horizon${none}.`,
   ];
 }
 
