@@ -1,6 +1,6 @@
 import type { Config } from '../config.js';
 import { familyNamed } from '../families/index.js';
-import { familyLabel } from '../families/label.js';
+import { familyLabel } from '../family-label.js';
 import type { Finding, FitProduct, NotForecast, ParameterDraws, ProductRecords } from '../records.js';
 import { parameterDraws } from './draws.js';
 import { seedOf } from './product.js';

@@ -1,5 +1,5 @@
 import { familyNamed } from '../families/index.js';
-import { familyLabel } from '../families/label.js';
+import { familyLabel } from '../family-label.js';
 import type { CandidateFit, Finding, NonparametricPoint } from '../records.js';
 
 /** Share of the ages outside the nonparametric interval from which on a curve is said to leave it. */

@@ -1,7 +1,7 @@
 import { daysPerMonth } from '../calendar.js';
 import { type Config, cutOffOf, rulesOf } from '../config.js';
 import { familyNamed } from '../families/index.js';
-import { familyLabel } from '../families/label.js';
+import { familyLabel } from '../family-label.js';
 import type { CandidateFit, Curve, FitProduct, NotForecast, ProductRecords } from '../records.js';
 import { rankCandidates } from './choice.js';
 import { betterRuledOut, leavesEstimate, ruledOutAhead, steepShape } from './findings.js';

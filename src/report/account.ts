@@ -1,6 +1,6 @@
 /** What went in: files with their rows and hashes, and the settings that count. */
 import type { ProductRules } from '../config.js';
-import { familyLabel } from '../families/label.js';
+import { familyLabel } from '../family-label.js';
 import type { FileAccount, IntakeDocument, IntakeProduct } from '../records.js';
 import { dateText } from './dates.js';
 import { countText, measureText, percentText, rateText } from './numbers.js';

@@ -1,5 +1,5 @@
 /** The table of candidate distributions. */
-import { familyLabel } from '../families/label.js';
+import { familyLabel } from '../family-label.js';
 import type { CandidateFit, CandidateForecast, FitProduct, ParameterInterval } from '../records.js';
 import {
   criterionText,
