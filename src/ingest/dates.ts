@@ -34,8 +34,16 @@ export function dateReader(dateFormat: string | null): DateReader {
   };
 }
 
-const dateTime =
-  /^\d{4}-\d{2}-\d{2}[T ]\d{2}(?::?\d{2}(?::?\d{2}(?:[.,]\d+)?)?)?(?:Z|[+-]\d{2}(?::?\d{2})?)?$/;
+/** Clock times as ISO 8601 has them (from memory): seconds to 60 for a leap second, and 24:00 for the end of a day. */
+const dateTime = new RegExp(
+  [
+    /^\d{4}-\d{2}-\d{2}[T ]/,
+    /(?:(?:[01]\d|2[0-3])(?::?[0-5]\d(?::?(?:[0-5]\d|60)(?:[.,]\d+)?)?)?|24(?::?00(?::?00(?:[.,]0+)?)?)?)/,
+    /(?:Z|[+-](?:[01]\d|2[0-3])(?::?[0-5]\d)?)?$/,
+  ]
+    .map(({ source }) => source)
+    .join(''),
+);
 
 function withoutTime(text: string): string {
   return text.length > 10 && dateTime.test(text) ? text.slice(0, 10) : text;

@@ -11,7 +11,8 @@ const reference = new UTCDate(2030, 9, 31);
 
 /**
  * Reads dates by a date-fns pattern, without a time zone. A pattern without a day names the week, month or quarter.
- * @throws UserError exit 2 when date-fns refuses the pattern, or when it names no year, or neither day, week, month nor quarter.
+ * @throws UserError exit 2 when date-fns refuses the pattern, or when it names a zone, an instant, no year, or neither day, week, month
+ * nor quarter.
  */
 export function patternReader(pattern: string): (text: string) => Dated | DateFault {
   const grain = checkedGrain(pattern);
@@ -31,7 +32,9 @@ export function patternReader(pattern: string): (text: string) => Dated | DateFa
 function checkedGrain(pattern: string): Grain {
   const letters = pattern.replace(/'(?:[^']|'')*'/g, '');
   if (/[YD]/.test(letters)) throw badPattern(pattern, 'a year is yyyy and a day is dd, in small letters');
-  if (!/[yRuPtT]/.test(letters)) throw badPattern(pattern, 'it names no year');
+  if (/[XxOztT]/.test(letters)) throw badPattern(pattern, 'a zone or an instant may change the written date');
+  if (/[Pp]/.test(letters)) throw badPattern(pattern, 'P and p depend on a locale');
+  if (!/[yRu]/.test(letters)) throw badPattern(pattern, 'it names no year');
   const grain = grainOf(letters);
   if (grain === null) throw badPattern(pattern, 'it names neither a day, a week, a month nor a quarter');
   if (!readsItself(pattern)) throw badPattern(pattern, 'date-fns cannot read it');
@@ -40,7 +43,7 @@ function checkedGrain(pattern: string): Grain {
 
 /** The finest unit that the letters of a pattern name (Unicode TR 35 field symbols). */
 function grainOf(letters: string): Grain | null {
-  if (/[dtTPEeci]/.test(letters)) return 'day';
+  if (/[dEeci]/.test(letters)) return 'day';
   if (/[Iw]/.test(letters)) return 'week';
   if (/[ML]/.test(letters)) return 'month';
   return /[Qq]/.test(letters) ? 'quarter' : null;

@@ -22,7 +22,7 @@ export interface TableHead {
 
 /**
  * Tells the columns that are headed by a period from those that are not.
- * @throws UserError exit 3 when no column is headed by a period, or two by the same.
+ * @throws UserError exit 3 when no column is headed by a period, or two by periods that share days.
  */
 export function periodColumns(source: Source, columns: Columns, read: DateReader): TableHead {
   const { header, unused } = columns;
@@ -61,18 +61,24 @@ function strayText(name: string, at: number): string {
   return `invalid header ${name}: it is no period, and the column holds something`;
 }
 
+/** Each column against the one before it that ends last, so that a long period meets all that lie within it. */
 function checkDoubled(source: Source, header: readonly string[], periods: readonly PeriodColumn[]): void {
-  const seen = new Map<number, PeriodColumn>();
   const faults: Fault[] = [];
-  for (const period of periods) {
-    const before = seen.get(period.when.key);
-    seen.set(period.when.key, period);
-    if (before === undefined) continue;
-    const message = `invalid header: ${header[before.at]} and ${header[period.at]} are the same period`;
-    const remedy = 'rename or remove one of them';
-    faults.push({ code: 'doubled-header', file: source.name, line: 1, message, remedy });
+  let latest: PeriodColumn | null = null;
+  for (const period of [...periods].sort((a, b) => a.when.from - b.when.from || a.at - b.at)) {
+    if (latest !== null && period.when.from < latest.when.to) {
+      const message = doubledText(header, latest, period);
+      const remedy = 'rename or remove one of them';
+      faults.push({ code: 'doubled-header', file: source.name, line: 1, message, remedy });
+    }
+    if (latest === null || period.when.to > latest.when.to) latest = period;
   }
   if (faults.length > 0) throw new UserError(faults, 3);
+}
+
+function doubledText(header: readonly string[], a: PeriodColumn, b: PeriodColumn): string {
+  const how = a.when.key === b.when.key ? 'are the same period' : 'share days';
+  return `invalid header: ${header[a.at]} and ${header[b.at]} ${how}`;
 }
 
 function noPeriods(source: Source, header: readonly string[]): UserError {

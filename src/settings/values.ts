@@ -18,7 +18,7 @@ export const currencyCode = checkedText('an ISO 4217 code of three capital lette
 
 /** A date-fns pattern that carries at least the year and the week, month or quarter. */
 export const datePattern = checkedText(
-  'a date-fns pattern with a year and a day, week, month or quarter, such as dd.MM.yyyy (not DD.MM.YYYY)',
+  'a date-fns pattern with a year and a day, week, month or quarter, such as dd.MM.yyyy (not DD.MM.YYYY), without zone (X, x, O, z), instant (T, t) or locale (P, p)',
   carriesDate,
 );
 
@@ -55,10 +55,11 @@ function checkedText(allowed: string, holds: (text: string) => boolean) {
 
 /**
  * Writes a known date with the pattern and reads it again; at most the place within the quarter may be lost. `D` and
- * `Y`, day of the year and local week-year, are taken for `d` and `y` by mistake.
+ * `Y`, day of the year and local week-year, are taken for `d` and `y` by mistake; zones and instants may change the date as
+ * it is written, and a locale's own pattern depends on the locale.
  */
 function carriesDate(pattern: string): boolean {
-  if (/[DY]/.test(pattern.replaceAll(/'[^']*'/g, ''))) return false;
+  if (/[DYXxOzTtPp]/.test(pattern.replaceAll(/'[^']*'/g, ''))) return false;
   const date = new UTCDate(Date.UTC(2003, 10, 25));
   try {
     const read = parse(format(date, pattern), pattern, new UTCDate(Date.UTC(2000, 0, 1)));

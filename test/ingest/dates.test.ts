@@ -21,6 +21,9 @@ describe('ISO 8601', () => {
     ['2026-10-31T00:30+14:00', '2026-10-31 2026-10-31 day'],
     ['2026-10-31 08:15', '2026-10-31 2026-10-31 day'],
     ['2026-10-31T0815-0700', '2026-10-31 2026-10-31 day'],
+    // ISO 8601 (from memory): 24:00 is the end of a day, second 60 a leap second
+    ['2026-10-31T24:00', '2026-10-31 2026-10-31 day'],
+    ['2016-12-31T23:59:60Z', '2016-12-31 2016-12-31 day'],
   ])('%s', (text, days) => expect(read(text)).toBe(days));
 
   test.each([
@@ -34,6 +37,12 @@ describe('ISO 8601', () => {
     '45960',
     'soon',
     '2026-10-31T',
+    '2026-10-31T25:00',
+    '2026-10-31T24:01',
+    '2026-10-31 23:60',
+    '2026-10-31T2359:61',
+    '2026-10-31T08:15+24:00',
+    '2026-10-31T08:15+01:75',
     '1026-10-31',
   ])('%s is not a date here', (text) => expect(read(text)).toBe('unreadable-date'));
 });
@@ -84,6 +93,17 @@ describe('a date-fns pattern', () => {
       if (zone === undefined) delete process.env.TZ;
       else process.env.TZ = zone;
     }
+  });
+
+  // A date-time's calendar date counts, and date-fns would move it to the reference zone (date-fns, Unicode tokens).
+  test.each(['X', 'x', 'xxx', 'O', 'z', 't', 'T', 'P', 'Pp'])('%s is refused beside a date', (token) => {
+    const pattern = `yyyy-MM-dd'T'HH:mm ${token}`;
+    expect(() => dateReader(pattern)).toThrow(`invalid dateFormat ${pattern}: `);
+  });
+
+  test('letters of the refused tokens may stand in quotes', () => {
+    expect(read('2024-03-05T23:59 x', "yyyy-MM-dd'T'HH:mm 'x'")).toBe('2024-03-05 2024-03-05 day');
+    expect(read('2024-03-05T23:59:59-11:00')).toBe('2024-03-05 2024-03-05 day');
   });
 
   test.each(['yyyy', 'YYYY-MM-DD', 'dd.MM.yyyy n', 'dd.MM.', 'xx', ''])('%s is refused', (pattern) => {

@@ -67,6 +67,11 @@ describe('exit 3: files that cannot be used', () => {
       { table: 'product,shipped_in,shipped,2026-01, 2026-01\nA,2026-01,9,1,1\n' },
       ['doubled-header'],
     ],
+    [
+      'a table with months beside their quarter',
+      { table: 'product,shipped_in,shipped,2026-08,2026-Q3,2026-09,2026-10\nA,2026-08,9,1,1,1,1\n' },
+      ['doubled-header', 'doubled-header'],
+    ],
   ])('%s', async (_, given, expected) => {
     const error = await faultOf(given);
     expect(error.exitCode).toBe(3);
@@ -99,6 +104,18 @@ describe('exit 3: files that cannot be used', () => {
     expect(beside.faults).toMatchObject([{ code: 'unknown-column', file: 'table-withdrawn.csv' }]);
     const empty = await ingestText({ table: `${header}\nA,2026-01,10,1,,,,\n` });
     expect(empty.files[0]?.unusedColumns).toEqual(['2025-2', 'spare', 'foo']);
+  });
+
+  // ISO 8601: week 7 of 2024 is 12 to 18 February, week 5 is 29 January to 4 February
+  test.each([
+    ['2026-08,2026-Q3', '2026-Q3 and 2026-08 share days'],
+    ['2024-W07,2024-02', '2024-02 and 2024-W07 share days'],
+    ['2024-02,2024-W05', '2024-W05 and 2024-02 share days'],
+    ['2024-01,2024-01', '2024-01 and 2024-01 are the same period'],
+  ])('columns of a table headed %s', async (periods, what) => {
+    const { faults } = await faultOf({ table: `product,shipped_in,shipped,${periods}\nA,2024-01,9,1,1\n` });
+    const message = `invalid header: ${what}`;
+    expect(faults).toMatchObject([{ code: 'doubled-header', file: 'table.csv', line: 1, message }]);
   });
 
   test('columns of a table that dateFormat cannot read are told by it', async () => {

@@ -6,7 +6,7 @@ const withInputs = (more: string) => `{ "shipments": { "files": ["s.csv"] },\n $
 
 const level = 'a number between 0 and 1 with at most five decimals';
 const pattern =
-  'a date-fns pattern with a year and a day, week, month or quarter, such as dd.MM.yyyy (not DD.MM.YYYY)';
+  'a date-fns pattern with a year and a day, week, month or quarter, such as dd.MM.yyyy (not DD.MM.YYYY), without zone (X, x, O, z), instant (T, t) or locale (P, p)';
 
 describe('a value that a key cannot hold is named with its place and what is allowed', () => {
   test.each([
@@ -43,6 +43,14 @@ describe('a value that a key cannot hold is named with its place and what is all
     [
       '"returns": { "dateFormat": "DD.MM.YYYY" }',
       `29: invalid returns.dateFormat "DD.MM.YYYY", allowed ${pattern}`,
+    ],
+    [
+      '"returns": { "dateFormat": "yyyy-MM-dd\'T\'HH:mm:ssXXX" }',
+      `29: invalid returns.dateFormat "yyyy-MM-dd'T'HH:mm:ssXXX", allowed ${pattern}`,
+    ],
+    [
+      '"returns": { "dateFormat": "dd.MM.yyyy P" }',
+      `29: invalid returns.dateFormat "dd.MM.yyyy P", allowed ${pattern}`,
     ],
     ['"returns": { "dateFormat": "dd.MM" }', `29: invalid returns.dateFormat "dd.MM", allowed ${pattern}`],
     ['"returns": { "dateFormat": "yyyy" }', `29: invalid returns.dateFormat "yyyy", allowed ${pattern}`],
