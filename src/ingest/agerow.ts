@@ -15,7 +15,7 @@ export function readAge(tally: FileTally, row: Row): AgeGroup | null {
   if (age !== '' && (from !== '' || to !== '')) {
     return badQuantity(tally, row, 'age', age, 'it must be empty where age_from or age_to is given');
   }
-  if (outcome === 'surviving') return surviving(tally, row, age !== '' ? age : from, to, quantity);
+  if (outcome === 'surviving') return surviving(tally, row, age, from, to, quantity);
   return age !== '' ? exact(tally, row, age, quantity) : interval(tally, row, from, to, quantity);
 }
 
@@ -27,11 +27,19 @@ function noOutcome(tally: FileTally, row: Row, text: string): null {
 }
 
 /** A survivor's age is exact, or it has an age_from and no end. */
-function surviving(tally: FileTally, row: Row, text: string, to: string, quantity: number): AgeGroup | null {
+function surviving(
+  tally: FileTally,
+  row: Row,
+  exactText: string,
+  fromText: string,
+  to: string,
+  quantity: number,
+): AgeGroup | null {
+  const [field, text] = exactText !== '' ? ['age', exactText] : ['age_from', fromText];
   if (text === '') return missingValue(tally, row, 'age');
   if (to !== '') return badQuantity(tally, row, 'age_to', to, 'it must be empty where a unit survives');
   const age = ageIn(text);
-  if (age === null) return badQuantity(tally, row, 'age', text, 'it must be a number, 0 or above');
+  if (age === null) return badQuantity(tally, row, field, text, 'it must be a number, 0 or above');
   return { outcome: 'surviving', from: age, to: age, exact: true, quantity };
 }
 

@@ -35,7 +35,7 @@ export function isWellFormed(tally: FileTally, row: Row): boolean {
   for (let i = 0; i < width; i++) {
     if ((cells[i] as string).length > longestCell) {
       const message = `invalid row: ${tally.columns?.header[i]} is longer than ${longestCell} characters`;
-      rejectRow(refOf(tally, row), 'field-too-long', null, message);
+      rejectRow(refOf(tally, row), 'field-too-long', i, message);
       return false;
     }
   }

@@ -55,12 +55,12 @@ const wholeOrZero = 'it must be a whole number, 0 or above';
 
 function badCell(tally: FileTally, row: Row, { at }: PeriodColumn): null {
   const message = `invalid ${tally.columns?.header[at]} ${textAt(row, at)}: ${wholeOrZero}`;
-  rejectRow(refOf(tally, row), 'bad-quantity', null, message);
+  rejectRow(refOf(tally, row), 'bad-quantity', at, message);
   return null;
 }
 
 function tooEarly(tally: FileTally, row: Row, { at }: PeriodColumn): null {
   const message = `${textAt(row, at)} units in ${tally.columns?.header[at]}, before the shipment`;
-  rejectRow(refOf(tally, row), 'return-before-shipment', null, message);
+  rejectRow(refOf(tally, row), 'return-before-shipment', at, message);
   return null;
 }

@@ -57,10 +57,15 @@ export function newTally(source: Source, role: InputRole): FileTally {
 
 /**
  * Puts a row among the rejected ones.
- * @param field our name of the column at fault, null when it is the whole row.
+ * @param field the column at fault, by our name or by its position; null when it is the whole row.
  * @throws UserError exit 3 when too many rows of the file are rejected to keep them all.
  */
-export function rejectRow(row: RowRef, code: RejectCode, field: string | null, message: string): void {
+export function rejectRow(
+  row: RowRef,
+  code: RejectCode,
+  field: string | number | null,
+  message: string,
+): void {
   keep(row, 'rejected', code, field, message);
   if (++row.tally.rejected > mostRejected) throw hopeless(row, message);
   if (row.product === null || row.quantity <= 0) return;
@@ -106,11 +111,11 @@ function keep(
   { tally, line, text }: RowRef,
   kind: RejectRow['kind'],
   code: RejectRow['code'],
-  field: string | null,
+  field: string | number | null,
   message: string,
 ): void {
-  const at = field === null ? -1 : (tally.columns?.at(field) ?? -1);
-  const column = tally.columns?.header[at] ?? '';
+  const at = typeof field === 'string' ? tally.columns?.at(field) : field;
+  const column = tally.columns?.header[at ?? -1] ?? '';
   tally.rejects.push({ file: tally.source.name, line, kind, code, column, message, row: text });
 }
 

@@ -54,6 +54,7 @@ test.each([
   ['A,surviving,1,,,', 'missing-value', 'age'],
   ['A,surviving,1,,4,6', 'bad-quantity', 'age_to'],
   ['A,surviving,1,old,,', 'bad-quantity', 'age'],
+  ['A,surviving,1,,old,', 'bad-quantity', 'age_from'],
   ['A,surviving,1,5', 'wrong-width', ''],
 ])('%s is rejected as %s', async (row, code, column) => {
   const { rejects } = await ingestText({ ages: `${header}A,returned,1,5,,\n${row}\n` }, { asOf: null });

@@ -83,7 +83,7 @@ test('wrong-width', async () => {
 test('field-too-long, cut in the list of rejects', async () => {
   const intake = await check(
     { shipments: counted, returns: `${origin}${'x'.repeat(5000)},2026-01,2026-02,1\n` },
-    ['returns.csv:2 rejected field-too-long'],
+    ['returns.csv:2 rejected field-too-long product'],
   );
   expect(intake.rejects[0]?.row.length).toBeLessThan(1100);
 });

@@ -45,9 +45,9 @@ test('rows are used or rejected whole', async () => {
   const intake = await ingestText({ table });
   expect(refused(intake)).toEqual([
     'table.csv:3 returns-exceed-shipped',
-    'table.csv:4 return-before-shipment',
+    'table.csv:4 return-before-shipment 2026-08',
     'table.csv:5 bad-quantity shipped',
-    'table.csv:6 bad-quantity',
+    'table.csv:6 bad-quantity 2026-10',
     'table.csv:7 after-as-of shipped_in',
     'table.csv:8 missing-value product',
     'table.csv:9 missing-value shipped_in',
