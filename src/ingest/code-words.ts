@@ -5,7 +5,7 @@ export const codeWords: Readonly<Record<RejectCode | SetAsideCode, string>> = {
   'unreadable-date': 'with an unreadable date',
   'ambiguous-date': 'with a date that can be read two ways',
   'missing-value': 'with a missing value',
-  'bad-quantity': 'with a quantity that is no whole number above 0',
+  'bad-quantity': 'with an invalid quantity',
   'wrong-width': 'with too many or too few fields',
   'unknown-product': 'of an unknown product',
   'unknown-unit': 'of an unknown unit',

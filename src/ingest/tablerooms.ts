@@ -15,20 +15,43 @@ export function usableCohorts(rows: readonly CohortRow[], cutoff: number): Cohor
   });
 }
 
-/** The rows of a table of withdrawals that its table has room for: withdrawn and returned within what was shipped. */
+/**
+ * The rows of a table of withdrawals that its table has room for: withdrawn and returned within what was shipped. Each repeats
+ * the `shipped` of its cohort, or of one of the rows that the table has for it.
+ * @param table the rows of the table that count.
+ * @param fleet what they shipped.
+ */
 export function usableWithdrawals(
   rows: readonly CohortRow[],
   table: readonly CohortRow[],
   fleet: Fleet,
   cutoff: number,
 ): CohortRow[] {
-  const rooms = new Map<string, number>();
+  const places = new Map<string, Place>();
   for (const row of table) {
-    rooms.set(placeOf(row), (rooms.get(placeOf(row)) ?? 0) + row.shipped - unitsBy(row, cutoff));
+    const before = places.get(placeOf(row)) ?? emptyPlace;
+    places.set(placeOf(row), {
+      shipped: before.shipped + row.shipped,
+      room: before.room + row.shipped - unitsBy(row, cutoff),
+      rows: [...before.rows, row.shipped],
+    });
   }
   const sorted = [...rows].sort((a, b) => compareText(a.text, b.text));
-  return sorted.filter((row) => !isLate(row, cutoff) && isKnown(row, fleet) && fits(row, rooms, cutoff));
+  return sorted.filter(
+    (row) => !isLate(row, cutoff) && isKnown(row, fleet) && agrees(row, places) && fits(row, places, cutoff),
+  );
 }
+
+/** What a table says of one product and ship period. */
+interface Place {
+  readonly shipped: number;
+  /** Units neither returned nor withdrawn so far. */
+  readonly room: number;
+  /** `shipped` of each of its rows. */
+  readonly rows: readonly number[];
+}
+
+const emptyPlace: Place = { shipped: 0, room: 0, rows: [] };
 
 /** Units in the cells of a row that begin before the cut-off. */
 export function unitsBy(row: CohortRow, cutoff: number): number {
@@ -47,14 +70,23 @@ function isKnown(row: CohortRow, fleet: Fleet): boolean {
   return false;
 }
 
-function fits(row: CohortRow, rooms: Map<string, number>, cutoff: number): boolean {
-  const room = rooms.get(placeOf(row)) ?? 0;
+/** True when a row of withdrawals says of its cohort what the table says; where the table has no such cohort nothing is said. */
+function agrees(row: CohortRow, places: ReadonlyMap<string, Place>): boolean {
+  const place = places.get(placeOf(row));
+  if (place === undefined || place.shipped === row.shipped || place.rows.includes(row.shipped)) return true;
+  const message = `invalid shipped ${row.shipped}: the table has ${place.shipped} for this product and ship period`;
+  rejectRow(row, 'bad-quantity', 'shipped', message);
+  return false;
+}
+
+function fits(row: CohortRow, places: Map<string, Place>, cutoff: number): boolean {
+  const place = places.get(placeOf(row)) ?? emptyPlace;
   const withdrawn = unitsBy(row, cutoff);
-  if (withdrawn <= room) {
-    rooms.set(placeOf(row), room - withdrawn);
+  if (withdrawn <= place.room) {
+    places.set(placeOf(row), { ...place, room: place.room - withdrawn });
     return true;
   }
-  const message = `${withdrawn} units withdrawn where ${room} were left of those shipped`;
+  const message = `${withdrawn} units withdrawn where ${place.room} were left of those shipped`;
   rejectRow(row, 'returns-exceed-shipped', null, message);
   return false;
 }

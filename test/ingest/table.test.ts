@@ -66,6 +66,21 @@ test('withdrawals of a table need room and a product', async () => {
   ]);
 });
 
+test('withdrawals of a table repeat what was shipped, of the cohort or of one of its rows', async () => {
+  const table = `${header}A,2026-08,60,1,0,3\nA,2026-08,40,0,0,0\nA,2026-09,10,0,0,0\n`;
+  const withdrawn = `${header}A,2026-08,100,0,0,1\nA,2026-08,40,0,0,2\nA,2026-08,10,0,0,4\nA,2026-09,1,0,0,1\nA,2026-09,0,0,0,0\n`;
+  const intake = await ingestText({ table, 'table-withdrawn': withdrawn });
+  expect(refused(intake)).toEqual([
+    'table-withdrawn.csv:4 bad-quantity shipped',
+    'table-withdrawn.csv:5 bad-quantity shipped',
+    'table-withdrawn.csv:6 bad-quantity shipped',
+  ]);
+  expect(intake.rejects[0]?.message).toBe(
+    'invalid shipped 10: the table has 100 for this product and ship period',
+  );
+  expect(cells(intake, 'withdrawn')).toEqual(['A 2026-08-01 2026-10-01 3']);
+});
+
 test('cells after the as-of date are left out and said to be', async () => {
   const beside = `${header}A,2026-08,100,0,1,4\nA,2026-08,100,0,0,5\n`;
   const intake = await ingestText(
