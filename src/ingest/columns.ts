@@ -15,7 +15,7 @@ export interface Columns {
 /**
  * Finds the fields of a role among the headers of a file: first by the setting `columns`, then by name or synonym.
  * @throws UserError exit 3 with every fault: two headers for one field, a missing or a refused column; exit 2 when `columns`
- * names no field of the role.
+ * names no field of the role, or gives two fields one header.
  */
 export function findColumns(
   role: InputRole,
@@ -32,6 +32,7 @@ export function findColumns(
     const wanted = mapped.get(field);
     found.set(field, wanted === undefined ? byName(field, names) : byHeader(wanted, names));
   }
+  checkShared(file, found, names);
   const faults = [...doubled(found, names), ...missing(role, found, names, mapped), ...refused(role, names)];
   if (faults.length > 0)
     throw new UserError(
@@ -78,6 +79,21 @@ function unknownField(role: InputRole, file: string, name: string, fields: reado
     { code: 'unknown-field', file, message, remedy: `use one of ${fields.join(', ')}` },
     2,
   );
+}
+
+/** Names and synonyms differ by field, so that only `columns` can give a header to two of them. */
+function checkShared(
+  file: string,
+  found: ReadonlyMap<string, readonly number[]>,
+  header: readonly string[],
+): void {
+  const faults = header.flatMap((name, at): Fault[] => {
+    const fields = [...found].filter(([, positions]) => positions.includes(at)).map(([field]) => field);
+    if (fields.length < 2) return [];
+    const message = `invalid columns: header ${name} is taken for ${fields.join(' and ')}`;
+    return [{ code: 'shared-header', file, message, remedy: 'name a header of its own for each field' }];
+  });
+  if (faults.length > 0) throw new UserError(faults, 2);
 }
 
 function doubled(found: ReadonlyMap<string, readonly number[]>, header: readonly string[]): Fault[] {

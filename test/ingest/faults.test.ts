@@ -208,6 +208,18 @@ describe('exit 2: settings and command line', () => {
   });
 });
 
+test.each([
+  [{ product: 'model', ship_date: 'Model' }, 'header model is taken for product and ship_date'],
+  [{ quantity: 'ship date' }, 'header ship_date is taken for ship_date and quantity'],
+])('a header that columns gives to two fields: %j', async (columns, what) => {
+  const given = { shipments: 'model,ship_date,qty\nA,2026-01,10\n', returns };
+  const error = await faultOf(given, { shipments: inputWith({ columns }) });
+  expect([error.exitCode, codes(error)]).toEqual([2, ['shared-header']]);
+  expect(error.message).toBe(
+    `shipments.csv: invalid columns: ${what}; name a header of its own for each field`,
+  );
+});
+
 describe('without an as-of date', () => {
   const days = (...dates: string[]) =>
     `unit,product,ship_date\n${dates.map((date, i) => `u${i},A,${date}`).join('\n')}\n`;
