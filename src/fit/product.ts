@@ -12,7 +12,7 @@ import { layTerms, type Terms, termsOf } from './terms.js';
 
 /** Refits behind `chosenShare`. */
 const selectionRefits = 200;
-const curvePoints = 61;
+const curveSteps = 60;
 
 /** Fits every candidate to one product, ranks them and chooses one; what cannot be forecast says why. */
 export function fitProduct(config: Config, records: ProductRecords): FitProduct {
@@ -43,7 +43,7 @@ export function fitProduct(config: Config, records: ProductRecords): FitProduct 
     nonparametric,
     curves: candidates
       .filter((candidate) => candidate.converged)
-      .map((candidate) => curve(candidate, oldestAge, rules.delayDays)),
+      .map((candidate) => curve(candidate, oldestAge, rules.delayDays, records.resolution !== 'age')),
   };
 }
 
@@ -116,13 +116,19 @@ function oldestAgeOf(config: Config, records: ProductRecords): number {
   return first === undefined ? 0 : cutOffOf(config) - first.from;
 }
 
-/** Share returned by age, from 0 to one and a half times the oldest age. */
-function curve(candidate: CandidateFit, oldestAge: number, delay: number): Curve {
+/**
+ * Share returned by age, from 0 to one and a half times the oldest age: in steps of half months, or of as many as give
+ * about sixty points; without a calendar sixty equal steps.
+ */
+function curve(candidate: CandidateFit, oldestAge: number, delay: number, dated: boolean): Curve {
   const family = familyNamed(candidate.family);
   const life = family.at(
     family.free(family.parameterNames.map((name) => candidate.parameters[name] as number)),
   );
-  const ages = Array.from({ length: curvePoints }, (_, i) => (1.5 * oldestAge * i) / (curvePoints - 1));
+  const end = 1.5 * oldestAge;
+  const half = 0.5 * daysPerMonth;
+  const step = dated ? half * Math.ceil(end / half / curveSteps) : end / curveSteps;
+  const ages = Array.from({ length: step > 0 ? Math.ceil(end / step - 1e-9) + 1 : 1 }, (_, i) => i * step);
   const probability = ages.map((age) => (age > delay ? Math.exp(life.logCdf(age - delay)) : 0));
   return { family: candidate.family, atRisk: candidate.atRisk, ages, probability };
 }

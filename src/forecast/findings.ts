@@ -1,4 +1,5 @@
 import type { Config } from '../config.js';
+import { familyLabel } from '../family-label.js';
 import { intervalKeys } from '../quantiles.js';
 import type { CandidateForecast, Finding, ForecastPeriod, PredictedCount } from '../records.js';
 
@@ -43,9 +44,11 @@ export function choiceFinding(
   );
   const weight = outside.reduce((sum, candidate) => sum + candidate.weight, 0);
   if (weight < noticedWeight) return [];
-  const named = outside.map(({ family, horizon }) => `${family} ${Math.round(horizon)}`).join(', ');
+  const named = outside
+    .map(({ family, horizon }) => `${familyLabel(family)} ${Math.round(horizon)}`)
+    .join(', ');
   const message =
-    `the interval takes the ${chosen} distribution as right; other candidates, with ${Math.round(100 * weight)} % of the weight ` +
+    `the interval takes the ${familyLabel(chosen)} distribution as right; other candidates, with ${Math.round(100 * weight)} % of the weight ` +
     `together, expect a count over the horizon outside its ${Math.round(100 * level)} % interval of ${lower} to ${upper} (${named})`;
   return [{ code: 'choice-outside-interval', severity: 'warning', message }];
 }

@@ -134,7 +134,7 @@ test('candidates of weight outside the interval are a warning; a narrow choice i
   const finding = product.findings.find((f) => f.code === 'choice-outside-interval');
   expect(finding?.severity).toBe('warning');
   expect(finding?.message).toMatch(
-    /^the interval takes the weibull distribution as right; .*with 46 % of the weight.*lognormal \d+/,
+    /^the interval takes the Weibull distribution as right; .*with 46 % of the weight.*lognormal \d+/,
   );
   const wide = forecast(cages, { ...everything, levels: [0.99] }).product;
   expect(wide.findings.map((f) => f.code)).not.toContain('choice-outside-interval');
