@@ -2,7 +2,6 @@ import type { Config } from '../config.js';
 import { UserError } from '../errors.js';
 import type { Intake, Progress, Sources } from '../records.js';
 import { readAges } from './ages.js';
-import { checkShares } from './consequences.js';
 import { endsEarly } from './ending.js';
 import { checkInputs, checkRows } from './inputs.js';
 import { checkPeriods } from './periodfit.js';
@@ -10,7 +9,7 @@ import type { Reading } from './reading.js';
 import { readRecords } from './records.js';
 import { readTables } from './table.js';
 import { fileAccount } from './tally.js';
-import { compareRejects, fileFindings } from './verdict.js';
+import { checkRejectShare, compareRejects, fileFindings } from './verdict.js';
 
 /**
  * Reads all inputs: records (shipments, returns, withdrawals, plan), or a Nevada-style table, or ages.
@@ -28,7 +27,7 @@ export async function ingest(config: Config, sources: Sources, progress: Progres
   const all = [...fileFindings(files, rejects), ...findings, ...endsEarly(config, tallies)];
   const intake = { products, files, rejects, findings: all };
   checkAsOf(config, intake);
-  checkShares(intake, config.maxRejectShare);
+  checkRejectShare(intake, config.maxRejectShare);
   checkPeriods(config, products);
   return intake;
 }

@@ -1,16 +1,25 @@
 import { compareText } from '../csv.js';
 import { type Fault, UserError } from '../errors.js';
-import type { FileAccount, Finding, Intake, RejectRow } from '../records.js';
+import type { FileAccount, Finding, InputRole, Intake, RejectCode, RejectRow } from '../records.js';
 import { codeWords, grouped } from './code-words.js';
 
+/** The files that say what was shipped. */
+const shipping: readonly InputRole[] = ['shipments', 'table'];
+
+/** Codes of rows that only miss their shipment. */
+const missing: readonly RejectCode[] = ['unknown-product', 'unknown-unit', 'returns-exceed-shipped'];
+
 /**
- * Refuses records of which too much was rejected in some file.
+ * Refuses records of which too much was rejected in some file. Where that is a file of shipments and most of its rows, other files
+ * that would pass without the rows that miss those shipments are no fault of their own.
  * @param maxRejectShare share of a file's rows, 0 to 1.
  * @throws UserError exit 3 that carries the intake, one fault a file.
  */
 export function checkRejectShare(intake: Intake, maxRejectShare: number): void {
-  const faults = intake.files
-    .filter((file) => file.rejected > maxRejectShare * file.read)
+  const refused = intake.files.filter((file) => file.rejected > maxRejectShare * file.read);
+  const lost = refused.some(({ role, rejected, read }) => shipping.includes(role) && rejected > 0.5 * read);
+  const faults = refused
+    .filter((file) => !lost || !onlyFollows(file, maxRejectShare))
     .map((file) => tooManyRejected(file, intake.rejects, maxRejectShare));
   if (faults.length > 0) throw new UserError(faults, 3, intake);
 }
@@ -37,6 +46,12 @@ export function fileFindings(files: readonly FileAccount[], rejects: readonly Re
 /** Orders rows as rejects.csv lists them: by file, line, then code. */
 export function compareRejects(a: RejectRow, b: RejectRow): number {
   return compareText(a.file, b.file) || a.line - b.line || compareText(a.code, b.code);
+}
+
+/** True for a file whose rejected rows would be few enough without those that miss their shipment. */
+function onlyFollows({ role, rejected, read, codes }: FileAccount, maxRejectShare: number): boolean {
+  const missed = missing.reduce((sum, code) => sum + (codes[code] ?? 0), 0);
+  return !shipping.includes(role) && rejected - missed <= maxRejectShare * read;
 }
 
 function tooManyRejected(file: FileAccount, rejects: readonly RejectRow[], share: number): Fault {
