@@ -45,13 +45,13 @@ export async function runCommand(invocation: Invocation, session: Session): Prom
   const delivery = { invocation, config: start.config, result, version, effects, watch };
   const run = output === null ? null : deliver({ ...delivery, output });
   const { json } = invocation;
+  terminal.mention(warningsText(result, invocation.command === 'run' || invocation.command === 'report'));
+  if (missing.length > 0) terminal.tell(missingText(missing));
   terminal.print(
     json
       ? jsonText(mainDocument(invocation, result, run))
       : resultText(invocation, out, result, terminal.width),
   );
-  terminal.mention(warningsText(result, invocation.command === 'run' || invocation.command === 'report'));
-  if (missing.length > 0) terminal.tell(missingText(missing));
   terminal.mention(summaryText(invocation, out, result, missing.length));
   return missing.length > 0 ? exitCodes.someNotForecast : exitCodes.done;
 }
