@@ -24,7 +24,7 @@ export async function ingest(config: Config, sources: Sources, progress: Progres
   const files = await Promise.all(tallies.map(fileAccount));
   checkRows(files);
   const rejects = tallies.flatMap((tally) => tally.rejects).sort(compareRejects);
-  const all = [...fileFindings(files, rejects), ...findings, ...endsEarly(config, tallies)];
+  const all = [...fileFindings(files), ...findings, ...endsEarly(config, tallies)];
   const intake = { products, files, rejects, findings: all };
   checkAsOf(config, intake);
   checkRejectShare(intake, config.maxRejectShare);

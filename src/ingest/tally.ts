@@ -1,6 +1,5 @@
 import type { DayRange } from '../calendar.js';
-import { rowText } from '../csv.js';
-import { UserError } from '../errors.js';
+import { compareText, rowText } from '../csv.js';
 import type { FileAccount, InputRole, RejectCode, RejectRow, SetAsideCode, Source } from '../records.js';
 import type { Columns } from './columns.js';
 
@@ -13,10 +12,14 @@ export interface FileTally {
   unitsAt: readonly number[] | null;
   read: number;
   rejected: number;
+  setAside: number;
+  /** Rows by reject or set-aside code. */
+  readonly codes: Map<string, number>;
   /** End of the latest days that a row gives, as far as they count by the as-of date; -Infinity without any. */
   seenUntil: number;
   /** Size and SHA-256 of the file, null until they are asked for. */
   digest: Awaited<ReturnType<Source['digest']>> | null;
+  /** The rows that are not used; of the rejected ones no more than `mostKept`. */
   readonly rejects: RejectRow[];
   /** Units in rejected rows, by the product that they name. */
   readonly rejectedUnits: Map<string, number>;
@@ -37,8 +40,8 @@ export interface RowRef {
 /** Longest cell that is read, in UTF-16 units. */
 export const longestCell = 1000;
 
-/** Rejected rows of a file that are kept; beyond them it is not read on. */
-export const mostRejected = 500_000;
+/** Rejected rows of a file that are kept; a file with more of them is counted to its end and refused. */
+export const mostKept = 500_000;
 
 export function newTally(source: Source, role: InputRole): FileTally {
   return {
@@ -48,6 +51,8 @@ export function newTally(source: Source, role: InputRole): FileTally {
     unitsAt: null,
     read: 0,
     rejected: 0,
+    setAside: 0,
+    codes: new Map(),
     seenUntil: -Infinity,
     digest: null,
     rejects: [],
@@ -58,7 +63,6 @@ export function newTally(source: Source, role: InputRole): FileTally {
 /**
  * Puts a row among the rejected ones.
  * @param field the column at fault, by our name or by its position; null when it is the whole row.
- * @throws UserError exit 3 when too many rows of the file are rejected to keep them all.
  */
 export function rejectRow(
   row: RowRef,
@@ -66,8 +70,8 @@ export function rejectRow(
   field: string | number | null,
   message: string,
 ): void {
-  keep(row, 'rejected', code, field, message);
-  if (++row.tally.rejected > mostRejected) throw hopeless(row, message);
+  if (++row.tally.rejected <= mostKept) keep(row, 'rejected', code, field, message);
+  count(row.tally, code);
   if (row.product === null || row.quantity <= 0) return;
   const { rejectedUnits } = row.tally;
   rejectedUnits.set(row.product, (rejectedUnits.get(row.product) ?? 0) + row.quantity);
@@ -75,7 +79,9 @@ export function rejectRow(
 
 /** Puts a row that is right, but does not count, beside the used ones. */
 export function setAsideRow(row: RowRef, code: SetAsideCode, field: string | null, message: string): void {
+  row.tally.setAside++;
   keep(row, 'set-aside', code, field, message);
+  count(row.tally, code);
 }
 
 /** Notes the days that a row gives. @param cutoff end of the as-of day; what comes after it is not noted. */
@@ -91,8 +97,7 @@ export function shownRow(cells: readonly string[]): string {
 /** The account: every row read is used, rejected or set aside. */
 export async function fileAccount(tally: FileTally): Promise<FileAccount> {
   const { bytes, sha256 } = tally.digest ?? (await tally.source.digest());
-  const { rejected } = tally;
-  const setAside = tally.rejects.length - rejected;
+  const { rejected, setAside } = tally;
   return {
     file: tally.source.name,
     role: tally.role,
@@ -102,7 +107,7 @@ export async function fileAccount(tally: FileTally): Promise<FileAccount> {
     used: tally.read - rejected - setAside,
     rejected,
     setAside,
-    codes: countCodes(tally.rejects),
+    codes: Object.fromEntries([...tally.codes].sort(([a], [b]) => compareText(a, b))),
     unusedColumns: tally.columns?.unused ?? [],
   };
 }
@@ -119,14 +124,6 @@ function keep(
   tally.rejects.push({ file: tally.source.name, line, kind, code, column, message, row: text });
 }
 
-function hopeless({ tally, line }: RowRef, last: string): UserError {
-  const message = `invalid records: more than ${mostRejected} rows were rejected; one is: ${last}`;
-  const remedy = 'check the columns, the dateFormat and the encoding of the file';
-  return new UserError({ code: 'too-many-rejected', file: tally.source.name, line, message, remedy }, 3);
-}
-
-function countCodes(rejects: readonly RejectRow[]): Record<string, number> {
-  const counts: Record<string, number> = {};
-  for (const code of rejects.map((row) => row.code).sort()) counts[code] = (counts[code] ?? 0) + 1;
-  return counts;
+function count({ codes }: FileTally, code: RejectRow['code']): void {
+  codes.set(code, (codes.get(code) ?? 0) + 1);
 }

@@ -2,6 +2,7 @@ import { compareText } from '../csv.js';
 import { type Fault, UserError } from '../errors.js';
 import type { FileAccount, Finding, InputRole, Intake, RejectCode, RejectRow } from '../records.js';
 import { codeWords, grouped } from './code-words.js';
+import { mostKept } from './tally.js';
 
 /** The files that say what was shipped. */
 const shipping: readonly InputRole[] = ['shipments', 'table'];
@@ -11,12 +12,15 @@ const missing: readonly RejectCode[] = ['unknown-product', 'unknown-unit', 'retu
 
 /**
  * Refuses records of which too much was rejected in some file. Where that is a file of shipments and most of its rows, other files
- * that would pass without the rows that miss those shipments are no fault of their own.
+ * that would pass without the rows that miss those shipments are no fault of their own. A file with
+ * more rejected rows than are kept is refused whatever the share.
  * @param maxRejectShare share of a file's rows, 0 to 1.
  * @throws UserError exit 3 that carries the intake, one fault a file.
  */
 export function checkRejectShare(intake: Intake, maxRejectShare: number): void {
-  const refused = intake.files.filter((file) => file.rejected > maxRejectShare * file.read);
+  const refused = intake.files.filter(
+    ({ rejected, read }) => rejected > mostKept || rejected > maxRejectShare * read,
+  );
   const lost = refused.some(({ role, rejected, read }) => shipping.includes(role) && rejected > 0.5 * read);
   const faults = refused
     .filter((file) => !lost || !onlyFollows(file, maxRejectShare))
@@ -25,15 +29,15 @@ export function checkRejectShare(intake: Intake, maxRejectShare: number): void {
 }
 
 /** What a reader should know of each file: rows rejected, rows set aside, no rows at all. */
-export function fileFindings(files: readonly FileAccount[], rejects: readonly RejectRow[]): Finding[] {
+export function fileFindings(files: readonly FileAccount[]): Finding[] {
   return files.flatMap((file) => {
     const findings: Finding[] = [];
     if (file.rejected > 0) {
-      const message = `${rowsOf(file.rejected, file)} rejected: ${wordsOf(file, rejects, 'rejected')}`;
+      const message = `${rowsOf(file.rejected, file)} rejected: ${wordsOf(file, 'rejected')}`;
       findings.push({ code: 'rows-rejected', severity: 'warning', message });
     }
     if (file.setAside > 0) {
-      const message = `${rowsOf(file.setAside, file)} set aside: ${wordsOf(file, rejects, 'set-aside')}`;
+      const message = `${rowsOf(file.setAside, file)} set aside: ${wordsOf(file, 'set-aside')}`;
       findings.push({ code: 'rows-set-aside', severity: 'note', message });
     }
     if (file.read === 0) {
@@ -57,12 +61,17 @@ function onlyFollows({ role, rejected, read, codes }: FileAccount, maxRejectShar
 function tooManyRejected(file: FileAccount, rejects: readonly RejectRow[], share: number): Fault {
   const first = rejects.find((row) => row.file === file.file && row.kind === 'rejected');
   const example = first === undefined ? '' : `; the first is line ${first.line}: ${first.message}`;
-  const codes = codesOf(file, rejects, 'rejected');
+  const codes = codesOf(file, 'rejected')
+    .map(([code, rows]) => `${code} ${rows}`)
+    .join(', ');
   return {
     code: 'too-many-rejected',
     file: file.file,
     message: `invalid records: ${grouped(file.rejected)} of ${grouped(file.read)} rows were rejected (${codes})${example}`,
-    remedy: `correct the rows that rejects.csv lists, or raise maxRejectShare (${share}) if they may be missed`,
+    remedy:
+      file.rejected > mostKept
+        ? `check the columns, the dateFormat and the encoding of the file; rejects.csv lists the first ${grouped(mostKept)}`
+        : `correct the rows that rejects.csv lists, or raise maxRejectShare (${share}) if they may be missed`,
   };
 }
 
@@ -71,20 +80,14 @@ function rowsOf(rows: number, { read, file }: FileAccount): string {
   return `${grouped(rows)} of ${grouped(read)} ${read === 1 ? 'row' : 'rows'} of ${file}`;
 }
 
-/** `1 with a missing value (missing-value), 2 …`. */
-function wordsOf(file: FileAccount, rejects: readonly RejectRow[], kind: RejectRow['kind']): string {
-  const words = codesIn(file, rejects, kind).map(
-    (code) => `${grouped(file.codes[code] ?? 0)} ${codeWords[code]} (${code})`,
-  );
-  return words.join(', ');
+/** `1 with a missing value (missing-value), 2 …`, sorted by code. */
+function wordsOf(file: FileAccount, kind: RejectRow['kind']): string {
+  const words = new Map<string, string>(Object.entries(codeWords[kind]));
+  const counts = codesOf(file, kind);
+  return counts.map(([code, rows]) => `${grouped(rows)} ${words.get(code)} (${code})`).join(', ');
 }
 
-function codesOf(file: FileAccount, rejects: readonly RejectRow[], kind: RejectRow['kind']): string {
-  const counts = codesIn(file, rejects, kind).map((code) => `${code} ${file.codes[code]}`);
-  return counts.join(', ');
-}
-
-function codesIn(file: FileAccount, rejects: readonly RejectRow[], kind: RejectRow['kind']) {
-  const own = rejects.filter((row) => row.file === file.file && row.kind === kind).map((row) => row.code);
-  return [...new Set(own)].sort(compareText);
+/** The codes of one kind with their rows, sorted by code. */
+function codesOf({ codes }: FileAccount, kind: RejectRow['kind']): [string, number][] {
+  return Object.entries(codes).filter(([code]) => Object.hasOwn(codeWords[kind], code));
 }

@@ -171,14 +171,19 @@ describe('exit 3: files that cannot be used', () => {
     expect(lenient.faults.map(({ file }) => file)).toEqual(['returns.csv', 'withdrawals.csv']);
   });
 
-  test('a file with more than half a million bad rows is not read on', async () => {
-    const rows = 'A,soon,1\n'.repeat(500_001);
+  test('of more than half a million bad rows the first are kept, all are counted, whatever the share', async () => {
+    const rows = `${'A,soon,1\n'.repeat(500_001)}A,2026-01,0\nA,2026-12,1\nA,2026-01,10\n`;
     const error = await faultOf({ shipments: `product,ship_date,quantity\n${rows}`, returns });
-    expect([error.exitCode, codes(error), error.faults[0]?.line]).toEqual([
-      3,
-      ['too-many-rejected'],
-      500_002,
-    ]);
+    expect([error.exitCode, codes(error)]).toEqual([3, ['too-many-rejected']]);
+    expect(error.message).toMatch(
+      /^shipments.csv: invalid records: 500,002 of 500,004 rows were rejected \(bad-quantity 1, unreadable-date 500001\)/,
+    );
+    expect(error.message).toMatch(/; rejects.csv lists the first 500,000$/);
+    const counts = { read: 500_004, used: 1, rejected: 500_002, setAside: 1 };
+    const byCode = { 'after-as-of': 1, 'bad-quantity': 1, 'unreadable-date': 500_001 };
+    expect(error.intake?.files[0]).toMatchObject({ ...counts, codes: byCode });
+    const kept = error.intake?.rejects.filter(({ file }) => file === 'shipments.csv') ?? [];
+    expect([kept.length, kept.at(-2)?.line, kept.at(-1)?.line]).toEqual([500_001, 500_001, 500_004]);
   });
 
   test('more than a quarter of a million repeated units are one fault', async () => {
