@@ -9,6 +9,7 @@ import type { Reading } from './reading.js';
 import { readRecords } from './records.js';
 import { readTables } from './table.js';
 import { fileAccount } from './tally.js';
+import { unknownInSettings } from './unknown.js';
 import { checkRejectShare, compareRejects, fileFindings } from './verdict.js';
 
 /**
@@ -24,7 +25,12 @@ export async function ingest(config: Config, sources: Sources, progress: Progres
   const files = await Promise.all(tallies.map(fileAccount));
   checkRows(files);
   const rejects = tallies.flatMap((tally) => tally.rejects).sort(compareRejects);
-  const all = [...fileFindings(files), ...findings, ...endsEarly(config, tallies)];
+  const all = [
+    ...fileFindings(files),
+    ...unknownInSettings(config, products),
+    ...findings,
+    ...endsEarly(config, tallies),
+  ];
   const intake = { products, files, rejects, findings: all };
   checkAsOf(config, intake);
   checkRejectShare(intake, config.maxRejectShare);

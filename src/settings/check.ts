@@ -1,8 +1,8 @@
 import type * as z from 'zod';
 import type { Fault } from '../errors.js';
+import { nearest } from '../nearest.js';
 import type { Keys, Stated } from './keys.js';
 import { notBuilt } from './known.js';
-import { nearest } from './nearest.js';
 import { type Path, pathText, valueText } from './path.js';
 
 /** A fault whose place is still a path. */
