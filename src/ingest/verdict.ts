@@ -11,9 +11,9 @@ const shipping: readonly InputRole[] = ['shipments', 'table'];
 const missing: readonly RejectCode[] = ['unknown-product', 'unknown-unit', 'returns-exceed-shipped'];
 
 /**
- * Refuses records of which too much was rejected in some file. Where that is a file of shipments and most of its rows, other files
- * that would pass without the rows that miss those shipments are no fault of their own. A file with
- * more rejected rows than are kept is refused whatever the share.
+ * Refuses records of which too much was rejected in some file; one with more rejected rows than are kept is refused whatever
+ * the share. Where most rows of a refused file of shipments were rejected, other files that would pass without the rows that
+ * miss those shipments are no fault of their own.
  * @param maxRejectShare share of a file's rows, 0 to 1.
  * @throws UserError exit 3 that carries the intake, one fault a file.
  */
