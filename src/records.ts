@@ -180,8 +180,8 @@ export interface NevadaTable {
   readonly rows: readonly TableRow[];
 }
 
-/** A quantity of units by ship or return period. */
-export interface IntakeProduct {
+/** A product and what became of its units: units = returns + withdrawn + survivors. */
+export interface ProductCounts {
   readonly product: string;
   readonly segment: Segment | null;
   readonly resolution: ProductRecords['resolution'];
@@ -189,6 +189,10 @@ export interface IntakeProduct {
   readonly returns: number;
   readonly withdrawn: number;
   readonly survivors: number;
+}
+
+/** What intake.json says of a product. */
+export interface IntakeProduct extends ProductCounts {
   /** ISO dates; null without a calendar. */
   readonly firstShipped: string | null;
   readonly lastShipped: string | null;
@@ -257,14 +261,7 @@ export interface Curve {
   readonly probability: readonly number[];
 }
 
-export interface FitProduct {
-  readonly product: string;
-  readonly segment: Segment | null;
-  readonly resolution: ProductRecords['resolution'];
-  readonly units: number;
-  readonly returns: number;
-  readonly withdrawn: number;
-  readonly survivors: number;
+export interface FitProduct extends ProductCounts {
   readonly oldestAge: number;
   readonly delayDays: number;
   readonly delayReason: string | null;
