@@ -1,3 +1,4 @@
+import type { Family } from '../families/family.js';
 import { doubleExponential, gaussLegendre, type Rule } from '../math/quadrature.js';
 
 /**
@@ -32,6 +33,11 @@ const precisions = {
   fit: { ratio: 1.15, shape: 60, tolerance: 1e-14, step: 1 / 9 },
   draw: { ratio: 1.6, shape: 4, tolerance: 1e-3, step: 1 / 4 },
 };
+
+/** The precision for draws about a distribution: one that is steep needs the fine grid even so. */
+export function precisionFor(family: Family, free: Float64Array): Precision {
+  return family.spread(free) < 0.3 ? 'fit' : 'draw';
+}
 
 /** The grid with the given knots; those at or below the delay are dropped and the delay itself is the first. */
 export function ageGrid(knots: Iterable<number>, delay: number, precision: Precision): AgeGrid {

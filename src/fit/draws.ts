@@ -1,3 +1,4 @@
+import { precisionFor } from '../exposure/grid.js';
 import type { Family } from '../families/family.js';
 import { cholesky, solveCholesky } from '../math/linear.js';
 import { type Maximum, maximise } from '../math/maximise.js';
@@ -63,7 +64,7 @@ export interface Refitter {
  */
 export function refitter(terms: Terms, family: Family, best: Float64Array): Refitter {
   const coarse = coarseTerms(terms);
-  const likelihood = logLikelihood(coarse, layTerms(coarse, 'draw'), family);
+  const likelihood = logLikelihood(coarse, layTerms(coarse, precisionFor(family, best)), family);
   const options = { tolerance: 1e-5, inside: likelihood.inside, predictLast: true };
   const first = maximise(likelihood, best, { inside: likelihood.inside });
   const centre = first.converged ? first.point : best;

@@ -12,12 +12,18 @@ export interface Observed {
   readonly open: boolean;
 }
 
+/** Width of a bin in days: a month, or the period of the records where that is a week or a quarter. */
+export function binWidth(config: Config, records: ProductRecords): number {
+  if (config.period === 'week') return 7;
+  return config.period === 'quarter' && records.resolution === 'period' ? 3 * daysPerMonth : daysPerMonth;
+}
+
 /**
- * Bins of one month (of one week where the periods are weeks) that cover every age at risk; where the records know the day,
- * quarters of them at first, since a density that starts steeply is not constant over a month.
+ * Bins that cover every age at risk; where the records know the day, quarters of them at first, since a density that starts
+ * steeply is not constant over a month.
  */
 export function monthlyEdges(config: Config, records: ProductRecords): number[] {
-  const width = config.period === 'week' ? 7 : daysPerMonth;
+  const width = binWidth(config, records);
   const whole = Array.from(
     { length: Math.ceil(oldestAtRisk(config, records) / width) + 1 },
     (_, i) => i * width,

@@ -5,6 +5,7 @@ import { familyLabel } from '../family-label.js';
 import type { CandidateFit, Curve, FitProduct, NotForecast, ProductRecords } from '../records.js';
 import { rankCandidates } from './choice.js';
 import { betterRuledOut, leavesEstimate, ruledOutAhead, steepShape } from './findings.js';
+import { binWidth } from './kernels.js';
 import { fitFamilies, typicalAges } from './maximum.js';
 import { nonparametricEstimate } from './nonparametric.js';
 import { withChosenShares } from './selection.js';
@@ -37,7 +38,7 @@ export function fitProduct(config: Config, records: ProductRecords): FitProduct 
     findings: [
       ...steepShape(candidates),
       ...ruledOutAhead(candidates),
-      ...leavesEstimate(candidates[0], nonparametric, rules.delayDays, roughUntil(records)),
+      ...leavesEstimate(candidates[0], nonparametric, rules.delayDays, roughUntil(config, records)),
     ],
     candidates,
     nonparametric,
@@ -91,9 +92,9 @@ function misleading(candidates: readonly CandidateFit[]): NotForecast | null {
   return { code: 'best-fit-ruled-out', message };
 }
 
-/** Two months where ages come from dates, which know them to the cohort and the cell only. */
-function roughUntil(records: ProductRecords): number {
-  return records.resolution === 'age' ? 0 : 2 * daysPerMonth;
+/** Two months, or bins, where ages come from dates, which know them to the cohort and the cell only. */
+function roughUntil(config: Config, records: ProductRecords): number {
+  return records.resolution === 'age' ? 0 : 2 * Math.max(daysPerMonth, binWidth(config, records));
 }
 
 function unitCounts(

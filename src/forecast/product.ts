@@ -1,7 +1,6 @@
 import { parseIsoDate } from '../calendar.js';
 import { type Config, type ProductRules, rulesOf } from '../config.js';
-import type { Precision } from '../exposure/grid.js';
-import type { Family } from '../families/family.js';
+import { type Precision, precisionFor } from '../exposure/grid.js';
 import { familyNamed } from '../families/index.js';
 import type {
   CandidateFit,
@@ -104,11 +103,6 @@ function exposedOf(
 ): Exposed {
   if (records.resolution === 'age') return exposedAges(config, records, steps.length, config.ageStep ?? 0);
   return exposedCohorts(config, records, steps as Column[], precision);
-}
-
-/** A steep distribution needs the fine grid for its counts too. */
-function precisionFor(family: Family, best: Float64Array): Precision {
-  return family.spread(best) < 0.2 ? 'fit' : 'draw';
 }
 
 function freeOf(candidate: CandidateFit): Float64Array {

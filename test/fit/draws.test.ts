@@ -94,3 +94,23 @@ test('refits that fail too often yield no draws: all units back on one day, the 
   const terms = termsOf(configWith({ asOf: '1970-02-10' }), records);
   expect(parameterDraws(terms, weibull, Float64Array.of(5, 0), 200, ['f'])).toBeNull();
 });
+
+test('a distribution that is steep within one period is refitted on the fine grid', () => {
+  const months = Array.from({ length: 4 }, (_, i) => ({ from: 30 * i, to: 30 * (i + 1) }));
+  const cohorts = months.slice(0, 3).map((month) => ({ ...month, shipped: 60 }));
+  const returned = cohorts.flatMap((_, i) => [
+    { cohort: i, ...(months[i] as { from: number; to: number }), quantity: 14 },
+    { cohort: i, ...(months[i + 1] as { from: number; to: number }), quantity: 44 },
+  ]);
+  const records = datedProduct('S', cohorts, returned);
+  const settings = configWith({ asOf: '1970-04-30', candidates: ['weibull'], draws: 200 });
+  const fit = fitProduct(settings, records);
+  const { scale, shape } = fit.candidates[0]?.parameters as { scale: number; shape: number };
+  expect(shape).toBeGreaterThan(3.5);
+  const best = weibull.free([scale, shape]);
+  const { centre } = refitter(termsOf(settings, records), weibull, best);
+  centre.forEach((x, i) => {
+    expect(Math.abs(x - (best[i] as number))).toBeLessThan(1e-6);
+  });
+  expect(drawsForForecast(settings, records, fit)).toMatchObject({ family: 'weibull', findings: [] });
+});
