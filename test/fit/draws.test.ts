@@ -1,5 +1,6 @@
 /** The parameter draws of fractional random weights, by identities and by large-sample theory. */
 import { expect, test } from 'vitest';
+import { cellProbability } from '../../src/exposure/probability.js';
 import { lognormal } from '../../src/families/lognormal.js';
 import { weibull } from '../../src/families/weibull.js';
 import { coarseTerms } from '../../src/fit/coarse.js';
@@ -98,14 +99,17 @@ test('refits that fail too often yield no draws: all units back on one day, the 
 test('a distribution that is steep within one period is refitted on the fine grid', () => {
   const months = Array.from({ length: 4 }, (_, i) => ({ from: 30 * i, to: 30 * (i + 1) }));
   const cohorts = months.slice(0, 3).map((month) => ({ ...month, shipped: 60 }));
-  const returned = cohorts.flatMap((_, i) => [
-    { cohort: i, ...(months[i] as { from: number; to: number }), quantity: 14 },
-    { cohort: i, ...(months[i + 1] as { from: number; to: number }), quantity: 44 },
-  ]);
+  const life = { family: weibull, free: weibull.free([29, 6.4]), delay: 0, limit: Infinity };
+  const returned = cohorts.flatMap((cohort, i) =>
+    months.slice(i).flatMap((month) => {
+      const quantity = Math.round(60 * cellProbability(life, cohort, month));
+      return quantity === 0 ? [] : [{ cohort: i, ...month, quantity }];
+    }),
+  );
   const records = datedProduct('S', cohorts, returned);
   const settings = configWith({ asOf: '1970-04-30', candidates: ['weibull'], draws: 200 });
   const fit = fitProduct(settings, records);
-  const { scale, shape } = fit.candidates[0]?.parameters as { scale: number; shape: number };
+  const { scale = 0, shape = 0 } = fit.candidates[0]?.parameters ?? {};
   expect(shape).toBeGreaterThan(3.5);
   const best = weibull.free([scale, shape]);
   const { centre } = refitter(termsOf(settings, records), weibull, best);
