@@ -98,14 +98,15 @@ test('refits that fail too often yield no draws: all units back on one day, the 
 
 test('a distribution that is steep within one period is refitted on the fine grid', () => {
   const months = Array.from({ length: 4 }, (_, i) => ({ from: 30 * i, to: 30 * (i + 1) }));
-  const cohorts = months.slice(0, 3).map((month) => ({ ...month, shipped: 60 }));
   const life = { family: weibull, free: weibull.free([29, 6.4]), delay: 0, limit: Infinity };
-  const returned = cohorts.flatMap((cohort, i) =>
-    months.slice(i).flatMap((month) => {
-      const quantity = Math.round(60 * cellProbability(life, cohort, month));
-      return quantity === 0 ? [] : [{ cohort: i, ...month, quantity }];
+  const returned = months.slice(0, 2).flatMap((cohort, i) =>
+    months.slice(i, i + 3).map((month) => {
+      const quantity = Math.round(600 * cellProbability(life, cohort, month));
+      return { cohort: i, ...month, quantity };
     }),
   );
+  const shipped = (i: number) => returned.filter((c) => c.cohort === i).reduce((n, c) => n + c.quantity, 0);
+  const cohorts = months.slice(0, 2).map((month, i) => ({ ...month, shipped: shipped(i) }));
   const records = datedProduct('S', cohorts, returned);
   const settings = configWith({ asOf: '1970-04-30', candidates: ['weibull'], draws: 200 });
   const fit = fitProduct(settings, records);
