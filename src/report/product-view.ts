@@ -130,7 +130,8 @@ function ageRows({ table }: ProductParts) {
 function rejectedFinding({ table, forecast }: ProductParts): readonly Finding[] {
   const rise = forecast?.ifRejectedWereReal ?? null;
   if (rise === null || table.rejectedReturns === 0) return [];
-  const message = `if the rejected returns (${countText(table.rejectedReturns)}) were real, the forecast over the horizon would rise by about ${expectedText(rise)}`;
+  const much = rise < 0.05 ? 'less than 0.1' : `about ${expectedText(rise)}`;
+  const message = `if the rejected returns (${countText(table.rejectedReturns)}) were real, the forecast over the horizon would rise by ${much}`;
   return [{ code: 'rejected-returns', severity: 'note', message }];
 }
 
