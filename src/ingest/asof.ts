@@ -1,6 +1,6 @@
 import { type DayRange, isoDate, type PeriodKind, parseIsoDate, periodLabel, periodOf } from '../calendar.js';
 import type { Config } from '../config.js';
-import { UserError } from '../errors.js';
+import { exitCodes, UserError } from '../errors.js';
 
 /** Units or rows that the records date to some days. */
 export interface DatedQuantity {
@@ -12,7 +12,7 @@ export interface DatedQuantity {
 const strayShare = 0.02;
 
 /** The end of the as-of day, Infinity when the settings do not name one. */
-export function cutoffOf(config: Config): number {
+export function cutOffOrOpen(config: Config): number {
   const day = config.asOf === null ? null : parseIsoDate(config.asOf);
   return day === null ? Infinity : day + 1;
 }
@@ -26,7 +26,7 @@ export function missingAsOf(kind: PeriodKind, dates: Iterable<DatedQuantity>): U
       : `the last complete period in the records is ${periodLabel(period.from, kind)}: set asOf to ${isoDate(period.to - 1)}, or give --as-of ${isoDate(period.to - 1)}`;
   return new UserError(
     { code: 'missing-as-of', message: 'missing asOf: the last day whose records count', remedy },
-    2,
+    exitCodes.unusableSettings,
   );
 }
 

@@ -16,7 +16,7 @@ export interface Parts {
 }
 
 /** Puts the products together, sorted by name. */
-export function assemble(config: Config, parts: Parts, cutoff: number): ProductRecords[] {
+export function assemble(config: Config, parts: Parts, cutOff: number): ProductRecords[] {
   const { fleet, plans, claims } = parts;
   const built = [...fleet.products.keys()].sort(compareText).map((product) =>
     productRecords(
@@ -27,7 +27,7 @@ export function assemble(config: Config, parts: Parts, cutoff: number): ProductR
         claims: claims.get(product) ?? { units: [], counted: [] },
         planned: plans.get(product) ?? [],
       },
-      cutoff,
+      cutOff,
     ),
   );
   return built.map((records) => ({

@@ -1,5 +1,5 @@
 import { unprotectText } from '../csv.js';
-import { UserError } from '../errors.js';
+import { exitCodes, UserError } from '../errors.js';
 import type { Dated } from './dated.js';
 import type { DateReader } from './dates.js';
 import { type FileTally, longestCell, type RowRef, rejectRow, shownRow } from './tally.js';
@@ -50,7 +50,7 @@ export function productAt(tally: FileTally, row: Row, at: number): string {
   const remedy = 'give the product another name';
   throw new UserError(
     { code: 'reserved-product', file: tally.source.name, line: row.line, message, remedy },
-    3,
+    exitCodes.unusableInput,
   );
 }
 

@@ -1,5 +1,5 @@
 import { periodOf } from '../calendar.js';
-import { UserError } from '../errors.js';
+import { exitCodes, UserError } from '../errors.js';
 import type { Cohort } from '../records.js';
 import { type Dated, type Grain, grains } from './dated.js';
 import type { ShippedProduct } from './fleet.js';
@@ -21,7 +21,7 @@ export function cohortsOf(
   product: string,
   entry: ShippedProduct,
   others: readonly Dated[],
-  cutoff: number,
+  cutOff: number,
 ): Cohorts {
   const lots = [...entry.lots.values()];
   const grain = coarsest(product, [...lots.map((lot) => lot.shipped), ...others]);
@@ -33,7 +33,7 @@ export function cohortsOf(
   const starts = [...shippedFrom.keys()].sort((a, b) => a - b);
   const list = starts.map((from) => ({
     from,
-    to: Math.min(endOf(from, grain), cutoff),
+    to: Math.min(endOf(from, grain), cutOff),
     shipped: shippedFrom.get(from) as number,
   }));
   const index = new Map(starts.map((from, i) => [from, i]));
@@ -57,5 +57,5 @@ function endOf(from: number, grain: Grain): number {
 function mixedPeriods(product: string): UserError {
   const message = `invalid ship dates of ${product}: some are weeks and some are months or quarters`;
   const remedy = 'give its ship dates by day, or all by the same period';
-  return new UserError({ code: 'mixed-ship-periods', message, remedy }, 3);
+  return new UserError({ code: 'mixed-ship-periods', message, remedy }, exitCodes.unusableInput);
 }

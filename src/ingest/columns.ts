@@ -1,5 +1,5 @@
 import type { InputConfig } from '../config.js';
-import { type Fault, UserError } from '../errors.js';
+import { exitCodes, type Fault, UserError } from '../errors.js';
 import type { InputRole } from '../records.js';
 import { plainHeader, roleFields, synonyms } from './fields.js';
 
@@ -37,7 +37,7 @@ export function findColumns(
   if (faults.length > 0)
     throw new UserError(
       faults.map((fault) => ({ ...fault, file, line: 1 })),
-      3,
+      exitCodes.unusableInput,
     );
   const positions = new Map([...found].map(([field, at]) => [field, at[0] ?? -1]));
   const used = new Set(positions.values());
@@ -77,7 +77,7 @@ function unknownField(role: InputRole, file: string, name: string, fields: reado
   const message = `unknown field ${name} in columns of ${role}`;
   return new UserError(
     { code: 'unknown-field', file, message, remedy: `use one of ${fields.join(', ')}` },
-    2,
+    exitCodes.unusableSettings,
   );
 }
 
@@ -93,7 +93,7 @@ function checkShared(
     const message = `invalid columns: header ${name} is taken for ${fields.join(' and ')}`;
     return [{ code: 'shared-header', file, message, remedy: 'name a header of its own for each field' }];
   });
-  if (faults.length > 0) throw new UserError(faults, 2);
+  if (faults.length > 0) throw new UserError(faults, exitCodes.unusableSettings);
 }
 
 function doubled(found: ReadonlyMap<string, readonly number[]>, header: readonly string[]): Fault[] {

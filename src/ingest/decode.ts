@@ -1,5 +1,5 @@
 import { isUtf8 } from 'node:buffer';
-import { UserError } from '../errors.js';
+import { exitCodes, UserError } from '../errors.js';
 import type { Source } from '../records.js';
 
 /**
@@ -132,7 +132,7 @@ function textDecoder(label: string): InstanceType<typeof TextDecoder> {
         message: `unknown encoding ${label}`,
         remedy: 'name one of the WHATWG encodings, such as windows-1252, or save the file as UTF-8',
       },
-      2,
+      exitCodes.unusableSettings,
     );
   }
 }
@@ -141,19 +141,25 @@ function invalidUtf8(source: Source, offset: number): UserError {
   const remedy =
     'save the file as UTF-8, or name its encoding (such as windows-1252) in the setting encoding';
   const message = `invalid UTF-8 at byte offset ${offset}`;
-  return new UserError({ code: 'invalid-utf8', file: source.name, message, remedy }, 3);
+  return new UserError({ code: 'invalid-utf8', file: source.name, message, remedy }, exitCodes.unusableInput);
 }
 
 function invalidText(source: Source, label: string): UserError {
   const message = `invalid text: some bytes are not ${label}`;
   const remedy = 'save the file as UTF-8, or correct the setting encoding';
-  return new UserError({ code: 'invalid-encoding', file: source.name, message, remedy }, 3);
+  return new UserError(
+    { code: 'invalid-encoding', file: source.name, message, remedy },
+    exitCodes.unusableInput,
+  );
 }
 
 function compressed(source: Source): UserError {
   const message = 'invalid text: this is gzip';
   const remedy = 'name it .gz, or unpack it before it is piped in';
-  return new UserError({ code: 'compressed-file', file: source.name, message, remedy }, 3);
+  return new UserError(
+    { code: 'compressed-file', file: source.name, message, remedy },
+    exitCodes.unusableInput,
+  );
 }
 
 function asBuffer(bytes: Uint8Array): Buffer {

@@ -1,7 +1,7 @@
 import { isoDate } from '../calendar.js';
 import type { Config } from '../config.js';
 import type { Intake, IntakeDocument, IntakeProduct, ProductRecords } from '../records.js';
-import { cutoffOf } from './asof.js';
+import { cutOffOrOpen } from './asof.js';
 import { nevadaTable } from './nevada.js';
 
 /** The account and the Nevada-style tables as `intake.json` holds them. */
@@ -41,7 +41,7 @@ function intakeProduct(config: Config, records: ProductRecords): IntakeProduct {
     })),
     rejectedReturns: records.rejectedReturns,
     unusable: records.unusable,
-    table: resolution === 'age' ? null : nevadaTable(records, config.period, cutoffOf(config)),
+    table: resolution === 'age' ? null : nevadaTable(records, config.period, cutOffOrOpen(config)),
     ages,
   };
 }

@@ -1,6 +1,6 @@
 import type { Config } from '../config.js';
 import { compareText } from '../csv.js';
-import { UserError } from '../errors.js';
+import { exitCodes, UserError } from '../errors.js';
 import { refOf } from './cells.js';
 import { fingerprint } from './fingerprints.js';
 import { readShipments, type ShipmentRow } from './shipments.js';
@@ -30,14 +30,14 @@ export interface Duplicates {
 export async function findDuplicates(
   config: Config,
   tallies: readonly FileTally[],
-  cutoff: number,
+  cutOff: number,
   suspects: ReadonlySet<number>,
 ): Promise<Duplicates> {
   const removed: ShipmentRow[] = [];
   const conflicting: string[] = [];
   if (suspects.size === 0) return { removed, conflicting };
   if (suspects.size > mostSuspects) throw tooMany(suspects.size);
-  const groups = await readSuspects(config, tallies, cutoff, suspects);
+  const groups = await readSuspects(config, tallies, cutOff, suspects);
   for (const [unit, rows] of groups) {
     if (rows.length < 2) continue;
     const agree = rows.every((row) => sameShipment(row.shipment, (rows[0] as Suspect).shipment));
@@ -53,7 +53,7 @@ export async function findDuplicates(
 async function readSuspects(
   config: Config,
   tallies: readonly FileTally[],
-  cutoff: number,
+  cutOff: number,
   suspects: ReadonlySet<number>,
 ): Promise<Map<string, Suspect[]>> {
   const groups = new Map<string, Suspect[]>();
@@ -66,7 +66,7 @@ async function readSuspects(
       if (group === undefined) groups.set(shipment.unit, [suspect]);
       else group.push(suspect);
     };
-    await readShipments(config, again, cutoff, handle, () => {});
+    await readShipments(config, again, cutOff, handle, () => {});
   }
   return groups;
 }
@@ -94,5 +94,5 @@ function rejectSuspect({ shipment, ref }: Suspect, agree: boolean): void {
 function tooMany(count: number): UserError {
   const message = `invalid shipments: ${count} units come more than once`;
   const remedy = 'look for a file that is given twice, or for a column that is no serial number';
-  return new UserError({ code: 'too-many-duplicates', message, remedy }, 3);
+  return new UserError({ code: 'too-many-duplicates', message, remedy }, exitCodes.unusableInput);
 }

@@ -1,7 +1,7 @@
 import { type DayRange, isoDate, type PeriodKind, periodLabel, periodOf } from '../calendar.js';
 import type { Config } from '../config.js';
 import type { Finding, InputRole } from '../records.js';
-import { cutoffOf } from './asof.js';
+import { cutOffOrOpen } from './asof.js';
 import type { FileTally } from './tally.js';
 
 /** Roles whose files should reach the as-of date. */
@@ -16,14 +16,14 @@ export function endsEarly(config: Config, tallies: readonly FileTally[]): Findin
   if (asOf === null) return [];
   const ends = tallies.filter(({ role }) => current.includes(role)).map(({ seenUntil }) => seenUntil);
   const until = Math.max(-Infinity, ...ends);
-  const last = lastComplete(cutoffOf(config), period);
+  const last = lastComplete(cutOffOrOpen(config), period);
   if (until === -Infinity || until > last.from) return [];
   const label = periodLabel(last.from, period);
   const message = `the records end early: none is of ${label}, the last complete period by the as-of date ${asOf}, and the last shipment or return is of ${isoDate(until - 1)}; check that the files are up to date`;
   return [{ code: 'records-end-early', severity: 'warning', message }];
 }
 
-function lastComplete(cutoff: number, kind: PeriodKind): DayRange {
-  const period = periodOf(cutoff - 1, kind);
-  return period.to <= cutoff ? period : periodOf(period.from - 1, kind);
+function lastComplete(cutOff: number, kind: PeriodKind): DayRange {
+  const period = periodOf(cutOff - 1, kind);
+  return period.to <= cutOff ? period : periodOf(period.from - 1, kind);
 }

@@ -1,5 +1,5 @@
 import type { Config } from '../config.js';
-import { UserError } from '../errors.js';
+import { exitCodes, UserError } from '../errors.js';
 import type { Intake, Progress, Sources } from '../records.js';
 import { readAges } from './ages.js';
 import { endsEarly } from './ending.js';
@@ -51,5 +51,9 @@ function checkAsOf({ asOf }: Config, intake: Intake): void {
   if (intake.products.length > 0 || !late) return;
   const message = `invalid asOf ${asOf}: nothing was shipped by then`;
   const remedy = 'set asOf to a day after the first shipment, or check the ship dates';
-  throw new UserError({ code: 'as-of-before-first-shipment', message, remedy }, 3, intake);
+  throw new UserError(
+    { code: 'as-of-before-first-shipment', message, remedy },
+    exitCodes.unusableInput,
+    intake,
+  );
 }

@@ -1,4 +1,4 @@
-import { UserError } from '../errors.js';
+import { exitCodes, UserError } from '../errors.js';
 import type { FileAccount, InputRole, Sources } from '../records.js';
 
 /** Roles of which files without a row are no fault. */
@@ -38,19 +38,19 @@ export function checkRows(files: readonly FileAccount[]): void {
     message: `invalid ${role}: a header and no rows`,
     remedy: 'check the export that writes it',
   }));
-  if (faults.length > 0) throw new UserError(faults, 3);
+  if (faults.length > 0) throw new UserError(faults, exitCodes.unusableInput);
 }
 
 function mixed(roles: readonly string[]): UserError {
   const message = `invalid inputs: ${roles.join(', ')} cannot be used together`;
   const remedy = 'give shipments and returns, or a table, or ages';
-  return new UserError({ code: 'mixed-inputs', message, remedy }, 2);
+  return new UserError({ code: 'mixed-inputs', message, remedy }, exitCodes.unusableSettings);
 }
 
 function missing(role: 'shipments' | 'returns' | 'table', why: string): UserError {
   const message = `missing ${role}: ${why}`;
   return new UserError(
     { code: 'missing-input', message, remedy: `name the files in the settings, or with --${role}` },
-    2,
+    exitCodes.unusableSettings,
   );
 }

@@ -34,12 +34,12 @@ export interface Leaving extends RowRef {
 /**
  * Reads one file of returns or of withdrawals, by unit and with origin mixed, and hands on what counts by the cut-off; the
  * rest goes into the tally.
- * @param cutoff end of the as-of day, Infinity when it is not known.
+ * @param cutOff end of the as-of day, Infinity when it is not known.
  */
 export async function readLeavings(
   config: Config,
   tally: FileTally,
-  cutoff: number,
+  cutOff: number,
   handle: (leaving: Leaving) => void,
   onBytes: (bytes: number) => void,
 ): Promise<void> {
@@ -55,8 +55,8 @@ export async function readLeavings(
       return (cells, line) => {
         const leaving = readLeaving(tally, { cells, line }, at, readDate);
         if (leaving === null) return;
-        noteDays(tally, leaving.when, cutoff);
-        if (leaving.when.from < cutoff) handle(leaving);
+        noteDays(tally, leaving.when, cutOff);
+        if (leaving.when.from < cutOff) handle(leaving);
         else setAsideRow(leaving, 'after-as-of', dateField(kind), `${kind} after the as-of date`);
       };
     },

@@ -5,10 +5,10 @@ import type { Cell, NevadaTable, ProductRecords, TableRow } from '../records.js'
  * The Nevada-style table of a product: a row for every period with shipments, a column for every period from the first of them to
  * the as-of date. Cohorts and cells belong to the period that holds them; ingest refuses those that none holds.
  */
-export function nevadaTable(records: ProductRecords, kind: PeriodKind, cutoff: number): NevadaTable {
+export function nevadaTable(records: ProductRecords, kind: PeriodKind, cutOff: number): NevadaTable {
   const first = records.cohorts[0];
   if (first === undefined) return { periods: [], rows: [] };
-  const columns = periodsIn({ from: first.from, to: cutoff }, kind);
+  const columns = periodsIn({ from: first.from, to: cutOff }, kind);
   const column = new Map(columns.map(({ from }, i) => [from, i]));
   const rows = new Map<number, RowInTheMaking>();
   const rowOf = records.cohorts.map(({ from, shipped }) => {

@@ -1,7 +1,7 @@
 import { UTCDate } from '@date-fns/utc';
 import { format, parse } from 'date-fns';
 import { type PeriodKind, periodOf } from '../calendar.js';
-import { UserError } from '../errors.js';
+import { exitCodes, UserError } from '../errors.js';
 import { type Dated, dated, type Grain } from './dated.js';
 import type { DateFault } from './dates.js';
 
@@ -62,6 +62,6 @@ function badPattern(pattern: string, why: string): UserError {
   const message = `invalid dateFormat ${pattern}: ${why}`;
   return new UserError(
     { code: 'invalid-date-format', message, remedy: 'use a date-fns pattern such as dd.MM.yyyy' },
-    2,
+    exitCodes.unusableSettings,
   );
 }

@@ -1,6 +1,6 @@
 import { type DayRange, isoDate, type PeriodKind, periodOf } from '../calendar.js';
 import type { Config } from '../config.js';
-import { UserError } from '../errors.js';
+import { exitCodes, UserError } from '../errors.js';
 import type { ProductRecords } from '../records.js';
 
 /**
@@ -41,7 +41,7 @@ function tooFine(
       : own === common
         ? `the records of ${product} are by ${own}; set period to ${own}`
         : `set period to ${common}, the finest that holds every record`;
-  return new UserError({ code: 'period-too-fine', message, remedy }, 2);
+  return new UserError({ code: 'period-too-fine', message, remedy }, exitCodes.unusableSettings);
 }
 
 /** From fine to coarse. */

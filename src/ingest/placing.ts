@@ -27,7 +27,7 @@ export function placeClaims(
   claims: readonly Claim[],
   cohorts: Cohorts,
   rules: ProductRules,
-  cutoff: number,
+  cutOff: number,
 ): Placed {
   const [returned, withdrawn] = [newCells(), newCells()];
   let [beforeDelay, returns] = [0, 0];
@@ -35,7 +35,7 @@ export function placeClaims(
     const cohort = cohorts.list[index] as Cohort;
     const limit = warrantyLimit(rules, cohort.from);
     for (const claim of fitting(ofCohort, cohort.shipped)) {
-      const range = cutAt(claim.when, cutoff);
+      const range = cutAt(claim.when, cutOff);
       const outside = claim.kind === 'returned' ? outOfBounds(range, cohort, limit, rules.delayDays) : null;
       if (outside !== null) setClaimAside(claim, outside, rules);
       if (outside === 'before-delay') beforeDelay += claim.quantity;
@@ -48,8 +48,8 @@ export function placeClaims(
 }
 
 /** A stretch of days without what lies after the cut-off. */
-export function cutAt(range: DayRange, cutoff: number): DayRange {
-  return { from: range.from, to: Math.min(range.to, cutoff) };
+export function cutAt(range: DayRange, cutOff: number): DayRange {
+  return { from: range.from, to: Math.min(range.to, cutOff) };
 }
 
 function claimsByCohort(claims: readonly Claim[], cohorts: Cohorts): Map<number, Claim[]> {

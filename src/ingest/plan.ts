@@ -32,7 +32,7 @@ export interface Plans {
 export async function readPlans(
   config: Config,
   sources: readonly Source[],
-  cutoff: number,
+  cutOff: number,
   fleet: Fleet,
   progress: Progress,
 ): Promise<Plans> {
@@ -44,7 +44,7 @@ export async function readPlans(
     const begin = (header: string[]) => {
       tally.columns = findColumns('plan', tally.source.name, header, config.plan);
       return (cells: string[], line: number) => {
-        const planned = readPlanned(tally, { cells, line }, cutoff, fleet, readDate);
+        const planned = readPlanned(tally, { cells, line }, cutOff, fleet, readDate);
         if (planned === null) return;
         const { product, cohort, isRest } = planned;
         if (isRest) rests++;
@@ -83,7 +83,7 @@ function merged(cohorts: readonly Cohort[]): Cohort[] {
 function readPlanned(
   tally: FileTally,
   row: Row,
-  cutoff: number,
+  cutOff: number,
   fleet: Fleet,
   readDate: DateReader,
 ): { product: string; cohort: Cohort; isRest: boolean } | null {
@@ -99,7 +99,7 @@ function readPlanned(
   if (shipped === null || shipped <= 0) {
     return badQuantity(tally, row, 'quantity', text, 'it must be a whole number above 0');
   }
-  if (period.to <= cutoff) {
+  if (period.to <= cutOff) {
     setAsideRow(refOf(tally, row), 'before-as-of', 'ship_period', 'the period ends by the as-of date');
     return null;
   }
@@ -112,6 +112,6 @@ function readPlanned(
     );
     return null;
   }
-  const cohort = { from: Math.max(period.from, cutoff), to: period.to, shipped };
-  return { product, cohort, isRest: period.from < cutoff };
+  const cohort = { from: Math.max(period.from, cutOff), to: period.to, shipped };
+  return { product, cohort, isRest: period.from < cutOff };
 }

@@ -19,13 +19,13 @@ export interface ProductParts {
 export function productRecords(
   config: Config,
   parts: ProductParts,
-  cutoff: number,
+  cutOff: number,
 ): Omit<ProductRecords, 'rejectedReturns'> {
   const { product, planned } = parts;
   const claims = [...parts.claims.units.map(unitClaim), ...parts.claims.counted];
   const shipDates = claims.map((claim) => claim.shipped);
-  const cohorts = cohortsOf(product, parts.shipped, shipDates, cutoff);
-  const placed = placeClaims(claims, cohorts, rulesOf(config, product), cutoff);
+  const cohorts = cohortsOf(product, parts.shipped, shipDates, cutOff);
+  const placed = placeClaims(claims, cohorts, rulesOf(config, product), cutOff);
   const { returned, withdrawn } = placed;
   return {
     product,

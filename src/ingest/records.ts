@@ -1,7 +1,7 @@
 import type { Config } from '../config.js';
-import { UserError } from '../errors.js';
+import { exitCodes, UserError } from '../errors.js';
 import type { Progress, Sources } from '../records.js';
-import { cutoffOf, type DatedQuantity, missingAsOf } from './asof.js';
+import { cutOffOrOpen, type DatedQuantity, missingAsOf } from './asof.js';
 import { assemble } from './assemble.js';
 import { claimsByProduct } from './claims.js';
 import { addLeaving, type Departures, markConflict, meetShipment, newDepartures } from './departures.js';
@@ -21,29 +21,29 @@ import { type FileTally, newTally } from './tally.js';
  * @throws UserError exit 2 without an as-of date, exit 3 for files that cannot be used.
  */
 export async function readRecords(config: Config, sources: Sources, progress: Progress): Promise<Reading> {
-  const cutoff = cutoffOf(config);
+  const cutOff = cutOffOrOpen(config);
   const tallies = (role: 'shipments' | 'returns' | 'withdrawals') =>
     sources[role].map((source) => newTally(source, role));
   const leavingFiles = [...tallies('returns'), ...tallies('withdrawals')];
   const departures = newDepartures();
   for (const tally of leavingFiles) {
     const bytes = await byteProgress(tally, progress);
-    await readLeavings(config, tally, cutoff, (row) => keepLeaving(departures, row), bytes);
+    await readLeavings(config, tally, cutOff, (row) => keepLeaving(departures, row), bytes);
   }
   const shipmentFiles = tallies('shipments');
-  const fleet = await readFleet(config, shipmentFiles, cutoff, departures, progress);
+  const fleet = await readFleet(config, shipmentFiles, cutOff, departures, progress);
   checkUnits(fleet, departures, leavingFiles);
   if (config.asOf === null) throw missingAsOf(config.period, datesOf(fleet, departures));
   const claims = claimsByProduct(departures, fleet, config.period);
-  const plan = await readPlans(config, sources.plan, cutoff, fleet, progress);
-  const products = assemble(config, { fleet, claims, plans: plan.plans, returnsFiles: leavingFiles }, cutoff);
+  const plan = await readPlans(config, sources.plan, cutOff, fleet, progress);
+  const products = assemble(config, { fleet, claims, plans: plan.plans, returnsFiles: leavingFiles }, cutOff);
   return { products, tallies: [...shipmentFiles, ...leavingFiles, ...plan.tallies], findings: plan.findings };
 }
 
 async function readFleet(
   config: Config,
   tallies: readonly FileTally[],
-  cutoff: number,
+  cutOff: number,
   departures: Departures,
   progress: Progress,
 ): Promise<Fleet> {
@@ -57,9 +57,9 @@ async function readFleet(
       fingerprints.add(print);
       meetShipment(departures, shipment.unit, print, lot);
     };
-    await readShipments(config, tally, cutoff, handle, await byteProgress(tally, progress));
+    await readShipments(config, tally, cutOff, handle, await byteProgress(tally, progress));
   }
-  const { removed, conflicting } = await findDuplicates(config, tallies, cutoff, fingerprints.takeRepeated());
+  const { removed, conflicting } = await findDuplicates(config, tallies, cutOff, fingerprints.takeRepeated());
   for (const shipment of removed) removeShipment(fleet, shipment);
   for (const unit of conflicting) markConflict(departures, unit);
   return fleet;
@@ -80,7 +80,10 @@ function checkUnits(fleet: Fleet, departures: Departures, files: readonly FileTa
   if (first === undefined) return;
   const message = 'invalid rows: they name only a unit, and the shipments do not name units';
   const remedy = 'give shipments by unit, or product and ship_date in these rows';
-  throw new UserError({ code: 'units-not-shipped', file: first.source.name, message, remedy }, 3);
+  throw new UserError(
+    { code: 'units-not-shipped', file: first.source.name, message, remedy },
+    exitCodes.unusableInput,
+  );
 }
 
 function* datesOf(fleet: Fleet, departures: Departures): Generator<DatedQuantity> {

@@ -1,6 +1,6 @@
 import { finished } from 'node:stream/promises';
 import { Parser } from 'csv-parse';
-import { UserError } from '../errors.js';
+import { exitCodes, UserError } from '../errors.js';
 import type { Source } from '../records.js';
 import { utf8Bytes } from './decode.js';
 import { headerLine } from './separator.js';
@@ -123,17 +123,23 @@ async function endParser(source: Source, parser: RowParser): Promise<void> {
 function emptyFile(source: Source): UserError {
   const message = 'empty file: it has no header line';
   const remedy = 'check the export that writes it, or leave the file out';
-  return new UserError({ code: 'empty-file', file: source.name, message, remedy }, 3);
+  return new UserError({ code: 'empty-file', file: source.name, message, remedy }, exitCodes.unusableInput);
 }
 
 function holdsNulls(source: Source): UserError {
   const message = 'invalid text: the file holds null characters, as UTF-16 read as UTF-8 does';
   const remedy = 'set encoding to utf-16le or utf-16be, or save the file as UTF-8';
-  return new UserError({ code: 'invalid-encoding', file: source.name, line: 1, message, remedy }, 3);
+  return new UserError(
+    { code: 'invalid-encoding', file: source.name, line: 1, message, remedy },
+    exitCodes.unusableInput,
+  );
 }
 
 function unclosedQuote(source: Source, line: number): UserError {
   const message = `invalid row: a quoted field is not closed, or the row is longer than ${longestRow} bytes`;
   const remedy = 'close the quote; a quote inside a quoted field is written twice';
-  return new UserError({ code: 'unclosed-quote', file: source.name, line, message, remedy }, 3);
+  return new UserError(
+    { code: 'unclosed-quote', file: source.name, line, message, remedy },
+    exitCodes.unusableInput,
+  );
 }

@@ -30,12 +30,12 @@ export type ShipmentHandler = (shipment: ShipmentRow, row: Row) => void;
 
 /**
  * Reads one file of shipments, counted or by unit, and hands on what counts by the cut-off; the rest goes into the tally.
- * @param cutoff end of the as-of day, Infinity when it is not known.
+ * @param cutOff end of the as-of day, Infinity when it is not known.
  */
 export async function readShipments(
   config: Config,
   tally: FileTally,
-  cutoff: number,
+  cutOff: number,
   handle: ShipmentHandler,
   onBytes: (bytes: number) => void,
 ): Promise<void> {
@@ -57,8 +57,8 @@ export async function readShipments(
         const row = { cells, line };
         const shipment = readShipment(tally, row, at, readDate);
         if (shipment === null) return;
-        noteDays(tally, shipment.shipped, cutoff);
-        if (shipment.shipped.from < cutoff) handle(shipment, row);
+        noteDays(tally, shipment.shipped, cutOff);
+        if (shipment.shipped.from < cutOff) handle(shipment, row);
         else setAsideRow(refOf(tally, row), 'after-as-of', 'ship_date', 'shipped after the as-of date');
       };
     },

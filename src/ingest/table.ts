@@ -1,6 +1,6 @@
 import type { Config } from '../config.js';
 import type { Finding, ProductRecords, Progress, Sources } from '../records.js';
-import { cutoffOf, type DatedQuantity, missingAsOf } from './asof.js';
+import { cutOffOrOpen, type DatedQuantity, missingAsOf } from './asof.js';
 import { assemble } from './assemble.js';
 import type { Claim } from './claim.js';
 import type { ProductClaims } from './claims.js';
@@ -17,37 +17,37 @@ import type { CohortRow } from './tablerow.js';
  * @throws UserError exit 2 without an as-of date, exit 3 for files that cannot be used.
  */
 export async function readTables(config: Config, sources: Sources, progress: Progress): Promise<Reading> {
-  const cutoff = cutoffOf(config);
+  const cutOff = cutOffOrOpen(config);
   const table = await readCohortRows(config, sources.table, 'table', progress);
   const beside = sources['table-withdrawn'];
   const withdrawn = await readCohortRows(config, beside, 'table-withdrawn', progress);
   if (config.asOf === null) throw missingAsOf(config.period, datesOf([...table.rows, ...withdrawn.rows]));
   const fleet = newFleet();
-  const cohorts = usableCohorts(table.rows, cutoff);
+  const cohorts = usableCohorts(table.rows, cutOff);
   for (const { product, shippedIn, shipped } of cohorts) {
     if (shipped > 0) addShipment(fleet, { product, unit: '', shipped: shippedIn, quantity: shipped });
   }
-  const left = usableWithdrawals(withdrawn.rows, cohorts, fleet, cutoff);
-  const plan = await readPlans(config, sources.plan, cutoff, fleet, progress);
-  const claims = [...claimsOf('returned', cohorts, cutoff), ...claimsOf('withdrawn', left, cutoff)];
+  const left = usableWithdrawals(withdrawn.rows, cohorts, fleet, cutOff);
+  const plan = await readPlans(config, sources.plan, cutOff, fleet, progress);
+  const claims = [...claimsOf('returned', cohorts, cutOff), ...claimsOf('withdrawn', left, cutOff)];
   const parts = { fleet, claims: sorted(claims), plans: plan.plans, returnsFiles: table.tallies };
-  const products = assemble(config, parts, cutoff);
+  const products = assemble(config, parts, cutOff);
   return {
     products,
     tallies: [...table.tallies, ...withdrawn.tallies, ...plan.tallies],
     findings: [
       ...plan.findings,
-      ...lateCells('returns', cohorts, cutoff),
-      ...lateCells('withdrawals', left, cutoff),
+      ...lateCells('returns', cohorts, cutOff),
+      ...lateCells('withdrawals', left, cutOff),
       ...outOfBounds(claims, products),
     ],
   };
 }
 
-function claimsOf(kind: Claim['kind'], rows: readonly CohortRow[], cutoff: number): Claim[] {
+function claimsOf(kind: Claim['kind'], rows: readonly CohortRow[], cutOff: number): Claim[] {
   return rows.flatMap(({ product, shippedIn, cells }) =>
     cells
-      .filter(({ when }) => when.from < cutoff)
+      .filter(({ when }) => when.from < cutOff)
       .map(({ when, quantity }) => ({ kind, product, shipped: shippedIn, when, quantity, rows: [] })),
   );
 }
@@ -69,8 +69,8 @@ function* datesOf(rows: readonly CohortRow[]): Generator<DatedQuantity> {
   }
 }
 
-function lateCells(what: string, rows: readonly CohortRow[], cutoff: number): Finding[] {
-  const late = rows.reduce((sum, row) => sum + unitsBy(row, Infinity) - unitsBy(row, cutoff), 0);
+function lateCells(what: string, rows: readonly CohortRow[], cutOff: number): Finding[] {
+  const late = rows.reduce((sum, row) => sum + unitsBy(row, Infinity) - unitsBy(row, cutOff), 0);
   const message = `${late} ${what} in columns of the table after the as-of date are not used`;
   return late === 0 ? [] : [{ code: 'after-as-of', severity: 'note', message }];
 }

@@ -1,6 +1,6 @@
 import type { Config } from '../config.js';
 import type { Progress, Source } from '../records.js';
-import { cutoffOf } from './asof.js';
+import { cutOffOrOpen } from './asof.js';
 import { findColumns } from './columns.js';
 import { dateReader } from './dates.js';
 import { byteProgress } from './progress.js';
@@ -27,7 +27,7 @@ export async function readCohortRows(
   progress: Progress,
 ): Promise<CohortRows> {
   const input = role === 'table' ? config.table : config.tableWithdrawn;
-  const cutoff = cutoffOf(config);
+  const cutOff = cutOffOrOpen(config);
   const rows: CohortRow[] = [];
   const tallies = sources.map((source) => newTally(source, role));
   const read = dateReader(input.dateFormat);
@@ -41,11 +41,11 @@ export async function readCohortRows(
         const row = readCohortRow(tally, { cells, line }, found.periods, read);
         if (row !== null) {
           rows.push(row);
-          noteDays(tally, row.shippedIn, cutoff);
+          noteDays(tally, row.shippedIn, cutOff);
         }
         if (cells.length !== header.length) return;
         for (const { at } of filled(found.others, cells)) strays.add(at);
-        for (const { when } of filled(found.periods, cells)) noteDays(tally, when, cutoff);
+        for (const { when } of filled(found.periods, cells)) noteDays(tally, when, cutOff);
       };
     };
     tally.read = await readRows(tally.source, input.encoding, begin, await byteProgress(tally, progress));

@@ -1,4 +1,4 @@
-import { type Fault, UserError } from '../errors.js';
+import { exitCodes, type Fault, UserError } from '../errors.js';
 import type { Source } from '../records.js';
 import type { Columns } from './columns.js';
 import type { Dated } from './dated.js';
@@ -51,7 +51,7 @@ export function checkStrays(tally: FileTally, strays: ReadonlySet<number>, dateF
   const faults = [...strays]
     .sort((a, b) => a - b)
     .map((at): Fault => ({ ...place, message: strayText(tally.columns?.header[at] ?? '', at), remedy }));
-  throw new UserError(faults, 3);
+  throw new UserError(faults, exitCodes.unusableInput);
 }
 
 const isoRemedy = 'head the columns 2026-10, 2026-W45 or 2026-Q4, and leave out what is no period';
@@ -73,7 +73,7 @@ function checkDoubled(source: Source, header: readonly string[], periods: readon
     }
     if (latest === null || period.when.to > latest.when.to) latest = period;
   }
-  if (faults.length > 0) throw new UserError(faults, 3);
+  if (faults.length > 0) throw new UserError(faults, exitCodes.unusableInput);
 }
 
 function doubledText(header: readonly string[], a: PeriodColumn, b: PeriodColumn): string {
@@ -84,5 +84,8 @@ function doubledText(header: readonly string[], a: PeriodColumn, b: PeriodColumn
 function noPeriods(source: Source, header: readonly string[]): UserError {
   const message = `missing column headed by a period; the headers are ${header.join(', ')}`;
   const remedy = 'head the columns 2026-10, 2026-W45 or 2026-Q4';
-  return new UserError({ code: 'missing-column', file: source.name, line: 1, message, remedy }, 3);
+  return new UserError(
+    { code: 'missing-column', file: source.name, line: 1, message, remedy },
+    exitCodes.unusableInput,
+  );
 }

@@ -4,10 +4,10 @@ import type { CohortRow } from './tablerow.js';
 import { rejectRow, setAsideRow } from './tally.js';
 
 /** The rows of a table that count: not after the cut-off, and with no more returns than were shipped. */
-export function usableCohorts(rows: readonly CohortRow[], cutoff: number): CohortRow[] {
+export function usableCohorts(rows: readonly CohortRow[], cutOff: number): CohortRow[] {
   return rows.filter((row) => {
-    if (isLate(row, cutoff)) return false;
-    const returned = unitsBy(row, cutoff);
+    if (isLate(row, cutOff)) return false;
+    const returned = unitsBy(row, cutOff);
     if (returned <= row.shipped) return true;
     const message = `${returned} units returned where ${row.shipped} were shipped`;
     rejectRow(row, 'returns-exceed-shipped', null, message);
@@ -25,20 +25,20 @@ export function usableWithdrawals(
   rows: readonly CohortRow[],
   table: readonly CohortRow[],
   fleet: Fleet,
-  cutoff: number,
+  cutOff: number,
 ): CohortRow[] {
   const places = new Map<string, Place>();
   for (const row of table) {
     const before = places.get(placeOf(row)) ?? emptyPlace;
     places.set(placeOf(row), {
       shipped: before.shipped + row.shipped,
-      room: before.room + row.shipped - unitsBy(row, cutoff),
+      room: before.room + row.shipped - unitsBy(row, cutOff),
       rows: [...before.rows, row.shipped],
     });
   }
   const sorted = [...rows].sort((a, b) => compareText(a.text, b.text));
   return sorted.filter(
-    (row) => !isLate(row, cutoff) && isKnown(row, fleet) && agrees(row, places) && fits(row, places, cutoff),
+    (row) => !isLate(row, cutOff) && isKnown(row, fleet) && agrees(row, places) && fits(row, places, cutOff),
   );
 }
 
@@ -54,12 +54,12 @@ interface Place {
 const emptyPlace: Place = { shipped: 0, room: 0, rows: [] };
 
 /** Units in the cells of a row that begin before the cut-off. */
-export function unitsBy(row: CohortRow, cutoff: number): number {
-  return row.cells.reduce((sum, { when, quantity }) => sum + (when.from < cutoff ? quantity : 0), 0);
+export function unitsBy(row: CohortRow, cutOff: number): number {
+  return row.cells.reduce((sum, { when, quantity }) => sum + (when.from < cutOff ? quantity : 0), 0);
 }
 
-function isLate(row: CohortRow, cutoff: number): boolean {
-  if (row.shippedIn.from < cutoff) return false;
+function isLate(row: CohortRow, cutOff: number): boolean {
+  if (row.shippedIn.from < cutOff) return false;
   setAsideRow(row, 'after-as-of', 'shipped_in', 'shipped after the as-of date');
   return true;
 }
@@ -79,9 +79,9 @@ function agrees(row: CohortRow, places: ReadonlyMap<string, Place>): boolean {
   return false;
 }
 
-function fits(row: CohortRow, places: Map<string, Place>, cutoff: number): boolean {
+function fits(row: CohortRow, places: Map<string, Place>, cutOff: number): boolean {
   const place = places.get(placeOf(row)) ?? emptyPlace;
-  const withdrawn = unitsBy(row, cutoff);
+  const withdrawn = unitsBy(row, cutOff);
   if (withdrawn <= place.room) {
     places.set(placeOf(row), { ...place, room: place.room - withdrawn });
     return true;

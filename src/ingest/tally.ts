@@ -84,9 +84,9 @@ export function setAsideRow(row: RowRef, code: SetAsideCode, field: string | nul
   count(row.tally, code);
 }
 
-/** Notes the days that a row gives. @param cutoff end of the as-of day; what comes after it is not noted. */
-export function noteDays(tally: FileTally, { from, to }: DayRange, cutoff: number): void {
-  if (from < cutoff && to > tally.seenUntil) tally.seenUntil = Math.min(to, cutoff);
+/** Notes the days that a row gives. @param cutOff end of the as-of day; what comes after it is not noted. */
+export function noteDays(tally: FileTally, { from, to }: DayRange, cutOff: number): void {
+  if (from < cutOff && to > tally.seenUntil) tally.seenUntil = Math.min(to, cutOff);
 }
 
 /** A row as rejects.csv shows it; cells that are too long are cut. */

@@ -1,5 +1,5 @@
 import { compareText } from '../csv.js';
-import { type Fault, UserError } from '../errors.js';
+import { exitCodes, type Fault, UserError } from '../errors.js';
 import type { FileAccount, Finding, InputRole, Intake, RejectCode, RejectRow } from '../records.js';
 import { codeWords, grouped } from './code-words.js';
 import { mostKept } from './tally.js';
@@ -25,7 +25,7 @@ export function checkRejectShare(intake: Intake, maxRejectShare: number): void {
   const faults = refused
     .filter((file) => !lost || !onlyFollows(file, maxRejectShare))
     .map((file) => tooManyRejected(file, intake.rejects, maxRejectShare));
-  if (faults.length > 0) throw new UserError(faults, 3, intake);
+  if (faults.length > 0) throw new UserError(faults, exitCodes.unusableInput, intake);
 }
 
 /** What a reader should know of each file: rows rejected, rows set aside, no rows at all. */
