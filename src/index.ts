@@ -5,6 +5,9 @@
 
 export { type Config, type CostPerReturn, type InputConfig, type ProductRules, rulesOf } from './config.js';
 export { describeFault, exitCodes, type Fault, UserError } from './errors.js';
+export { cellProbability, type Life, survivorProbability } from './exposure/probability.js';
+export { type Family, freeOf } from './families/family.js';
+export { families, familyNamed, familyNames } from './families/index.js';
 export { jsonText } from './ledger/json.js';
 export { outputFiles } from './ledger/outputs.js';
 export { reopen } from './ledger/reopen.js';

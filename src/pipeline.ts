@@ -58,7 +58,8 @@ export type Until = 'table' | 'fit' | 'forecast';
 /**
  * The month end: records to table, fit and forecast.
  * @param earlier what a previous command left: `intake` alone, or `intake` and `fit`.
- * @throws UserError exit 3 when the records cannot be used, exit 2 when the settings name no as-of date.
+ * @throws UserError exit 3 when the records cannot be used, exit 2 when the settings do not fit them (no as-of date, no
+ * returns, another period).
  */
 export async function monthEnd(
   config: Config,
@@ -95,7 +96,8 @@ async function fitAll(
 ): Promise<FitDocument> {
   const inputs = products.map((records) => ({ config, records }));
   const done = (n: number) => effects.progress('fitting products', n, products.length);
-  const fits = await effects.parallel('fit', inputs, products.length, done);
+  const seconds = 0.3 * products.filter(({ returned, ages }) => returned.length + ages.length > 0).length;
+  const fits = await effects.parallel('fit', inputs, seconds, done);
   return { schema: 'returnfall/fit/1', asOf: config.asOf, ageUnit: config.ageUnit, products: fits };
 }
 
@@ -107,7 +109,8 @@ async function forecastAll(
 ): Promise<ForecastDocument> {
   const inputs = products.map((records, i) => ({ config, records, fit: fit.products[i] as FitProduct }));
   const done = (n: number) => effects.progress('forecasting products', n, products.length);
-  const results = await effects.parallel('forecast', inputs, products.length, done);
+  const seconds = (config.draws / 4000) * fit.products.filter(({ chosen }) => chosen !== null).length;
+  const results = await effects.parallel('forecast', inputs, seconds, done);
   return {
     schema: 'returnfall/forecast/1',
     asOf: config.asOf,

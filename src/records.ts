@@ -51,7 +51,7 @@ export interface AgeGroup {
   readonly quantity: number;
 }
 
-/** Why a product has no forecast; the code is stable. */
+/** Why a product has no forecast, or a candidate is ruled out; the code is stable. */
 export interface NotForecast {
   readonly code: string;
   readonly message: string;
@@ -274,6 +274,8 @@ export interface FitProduct extends ProductCounts {
   /** Best first (AICc), the ruled-out ones last. */
   readonly candidates: readonly CandidateFit[];
   readonly nonparametric: readonly NonparametricPoint[];
+  /** Level of its pointwise interval. */
+  readonly nonparametricLevel: number;
   readonly curves: readonly Curve[];
 }
 

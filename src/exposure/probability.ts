@@ -14,12 +14,12 @@ export interface Life {
   readonly limit: number;
 }
 
-/** SPEC 6.2 P(cell): the probability that a unit shipped within `shipped` is returned within `range`; to 1e-9 relative. */
+/** P(cell): the probability that a unit shipped within `shipped` is returned within `range`; to 1e-9 relative. */
 export function cellProbability(life: Life, shipped: DayRange, range: DayRange): number {
   return probability(life, returnedWithin(shipped, range, life.limit), 'inside');
 }
 
-/** SPEC 6.2 S: the probability that a unit shipped within `shipped` is not returned by the moment `cutOff`. */
+/** S: the probability that a unit shipped within `shipped` is not returned by the moment `cutOff`. */
 export function survivorProbability(life: Life, shipped: DayRange, cutOff: number): number {
   return probability(life, returnedBy(shipped, cutOff, life.limit), 'outside');
 }

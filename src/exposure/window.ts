@@ -2,7 +2,7 @@ import type { DayRange } from '../calendar.js';
 import { type AgeGrid, knotAt } from './grid.js';
 
 /**
- * The chance that a unit which returns at a given age is counted in a window: SPEC's mean over the unknown day of
+ * The chance that a unit which returns at a given age is counted in a window: the mean over the unknown day of
  * shipment, as a function of age. At most quadratic between its knots; ages beyond `cap` never count.
  */
 export interface Window {

@@ -6,7 +6,7 @@
  */
 export interface Family {
   readonly name: string;
-  /** Names of the parameters in order, as SPEC'd in fit.json. */
+  /** Names of the parameters in order, as fit.json names them. */
   readonly parameterNames: readonly string[];
   /** Parameters at free coordinates. */
   readonly parameters: (free: Float64Array) => number[];
@@ -57,14 +57,9 @@ export function jetSize(k: number): number {
   return 1 + k + (k * (k + 1)) / 2;
 }
 
-/** Hazard, density over survival. */
-export function logHazard(distribution: Distribution, age: number): number {
-  return distribution.logDensity(age) - distribution.logSurvival(age);
-}
-
-/** Cumulative hazard, −log survival. */
-export function cumulativeHazard(distribution: Distribution, age: number): number {
-  return -distribution.logSurvival(age);
+/** Free coordinates of parameters by name. @throws RangeError when one is missing or outside the domain. */
+export function freeOf(family: Family, parameters: Readonly<Record<string, number>>): Float64Array {
+  return family.free(family.parameterNames.map((name) => parameters[name] ?? Number.NaN));
 }
 
 /** Throws when a parameter is not a positive finite number. */

@@ -24,7 +24,7 @@ export function rankCandidates(fits: readonly Fitted[], d: number): CandidateFit
   const total = candidates.reduce((sum, c) => sum + Math.exp(-0.5 * (criterion(c) - best)), 0);
   return candidates
     .map((c) => ({ ...c, weight: c.ruledOut === null ? Math.exp(-0.5 * (criterion(c) - best)) / total : 0 }))
-    .sort((a, b) => order(a, b));
+    .sort(order);
 }
 
 /** AICc, or Infinity for a candidate that is ruled out. */

@@ -1,4 +1,5 @@
 import type { Config } from '../config.js';
+import { freeOf } from '../families/family.js';
 import { familyNamed } from '../families/index.js';
 import { familyLabel } from '../family-label.js';
 import type { Finding, FitProduct, NotForecast, ParameterDraws, ProductRecords } from '../records.js';
@@ -25,7 +26,7 @@ export function drawsForForecast(
   const skipped: string[] = [];
   for (const candidate of near) {
     const family = familyNamed(candidate.family);
-    const centre = family.free(family.parameterNames.map((name) => candidate.parameters[name] as number));
+    const centre = freeOf(family, candidate.parameters);
     const draws = parameterDraws(terms, family, centre, config.draws, seedOf(config, records));
     if (draws !== null) return { ...draws, findings: standInFinding(skipped, candidate.family) };
     skipped.push(familyLabel(candidate.family));

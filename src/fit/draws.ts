@@ -9,7 +9,7 @@ import { logLikelihood } from './likelihood.js';
 import { layTerms, type Terms } from './terms.js';
 
 /** A candidate whose refits fail more often than this is not used for intervals. */
-export const allowedFailures = 0.01;
+const allowedFailures = 0.01;
 
 /**
  * Draws of the parameters by fractional random weights (Xu, Gotwalt, Hong, King & Meeker 2020, Am. Stat. 74:345-358):
@@ -109,7 +109,7 @@ export function randomWeights(counts: Float64Array, words: readonly (string | nu
   return counts.map((count) => gammaDraw(random, count));
 }
 
-/** The generalised pivotal quantity; `centre` is the maximum on the draws' coarser grid, so that its error cancels. */
+/** The generalised pivotal quantity; `centre` is the maximum of the same coarse terms, so that their error cancels. */
 function pivotal(best: Float64Array, centre: Float64Array, draw: Float64Array): Float64Array {
   const [location, logScale] = [best[0] as number, best[1] ?? 0];
   const ratio = (centre[1] ?? 0) - (draw[1] ?? 0);

@@ -1,3 +1,4 @@
+import { freeOf } from '../families/family.js';
 import { familyNamed } from '../families/index.js';
 import { familyLabel } from '../family-label.js';
 import type { CandidateFit, Finding, NonparametricPoint } from '../records.js';
@@ -64,7 +65,7 @@ export function leavesEstimate(
 ): Finding[] {
   if (best === undefined || best.ruledOut !== null) return [];
   const family = familyNamed(best.family);
-  const life = family.at(family.free(family.parameterNames.map((name) => best.parameters[name] as number)));
+  const life = family.at(freeOf(family, best.parameters));
   const share = (age: number) => (age > delay ? Math.exp(life.logCdf(age - delay)) : 0);
   const judged = points.filter((point) => point.upper > point.lower && point.age > fromAge);
   const outside = judged.filter(({ age, probability, lower, upper }) => {

@@ -1,5 +1,6 @@
 import { type DayRange, daysPerMonth } from '../calendar.js';
 import { type Config, cutOffOf, rulesOf, warrantyLimit } from '../config.js';
+import { survivorsByCohort } from '../counts.js';
 import type { AgeGroup, ProductRecords } from '../records.js';
 
 /** Units that share one kernel: the chance, by bin of age, that a return at that age is compatible with what was seen. */
@@ -22,7 +23,7 @@ export function binWidth(config: Config, records: ProductRecords): number {
  * Bins that cover every age at risk; where the records know the day, quarters of them at first, since a density that starts
  * steeply is not constant over a month.
  */
-export function monthlyEdges(config: Config, records: ProductRecords): number[] {
+export function binEdges(config: Config, records: ProductRecords): number[] {
   const width = binWidth(config, records);
   const whole = Array.from(
     { length: Math.ceil(oldestAtRisk(config, records) / width) + 1 },
@@ -44,21 +45,19 @@ export function oldestAtRisk(config: Config, records: ProductRecords): number {
 /** Cells, withdrawn units and survivors of cohorts, with their kernels on the bins. */
 export function fromCohorts(config: Config, records: ProductRecords, edges: readonly number[]): Observed[] {
   const limit = (cohort: DayRange) => warrantyLimit(rulesOf(config, records.product), cohort.from);
-  const left = records.cohorts.map((cohort) => cohort.shipped);
+  const left = survivorsByCohort(records);
   const observed: Observed[] = [];
   for (const cell of records.returned) {
     const cohort = records.cohorts[cell.cohort] as DayRange;
     const within = (a: number, b: number) =>
       meanReturned(cohort, cell.to, a, b) - meanReturned(cohort, cell.from, a, b);
     observed.push(observe(edges, cell.quantity, cell.from - cohort.to, cell.to - cohort.from, within, false));
-    left[cell.cohort] = (left[cell.cohort] as number) - cell.quantity;
   }
   for (const cell of records.withdrawn) {
     const cohort = records.cohorts[cell.cohort] as DayRange;
     const age = Math.min(0.5 * (cell.from + cell.to - cohort.from - cohort.to), limit(cohort));
     const kept = (a: number, b: number) => 1 - meanReturned({ from: -0.5, to: 0.5 }, age, a, b);
     observed.push(observe(edges, cell.quantity, age - 0.5, age + 0.5, kept, true));
-    left[cell.cohort] = (left[cell.cohort] as number) - cell.quantity;
   }
   records.cohorts.forEach((cohort, i) => {
     const end = Math.min(cutOffOf(config), cohort.to + limit(cohort));

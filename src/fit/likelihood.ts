@@ -1,7 +1,7 @@
 import { integralsOn, windowProbability } from '../exposure/integrals.js';
 import type { LaidWindows } from '../exposure/window.js';
 import { type Family, type Jets, jetSize } from '../families/family.js';
-import type { Surface } from '../math/maximise.js';
+import { type Surface, withinBounds } from '../math/maximise.js';
 import type { AgeGroup } from '../records.js';
 import type { LaidTerms, Terms } from './terms.js';
 
@@ -9,10 +9,8 @@ import type { LaidTerms, Terms } from './terms.js';
 const groupedSpread = { narrowest: 0.01, widest: 100 };
 /** Exact ages need no grid. */
 const exactSpread = { narrowest: 1e-5, widest: 100 };
-/** Free coordinates are logs of ages and of spreads; beyond this their exponentials overflow. */
-const farthest = 650;
 
-/** The log likelihood of SPEC 6.2 in the free coordinates of a family; `counts` may be replaced between evaluations. */
+/** The log likelihood (README, Method 2) in the free coordinates of a family; `counts` may be replaced between evaluations. */
 export interface LogLikelihood extends Surface {
   /** Units (or random weights) behind each term, in the order of the terms. */
   readonly counts: Float64Array;
@@ -77,7 +75,7 @@ export function logLikelihood(terms: Terms, laid: LaidTerms, family: Family): Lo
   const { narrowest, widest } = laid.returned.count > 0 ? groupedSpread : exactSpread;
   const inside = (point: Float64Array) => {
     const spread = family.spread(point);
-    return spread > narrowest && spread < widest && point.every((x) => Math.abs(x) <= farthest);
+    return spread > narrowest && spread < widest && withinBounds(point);
   };
   return { size: k, gradient, hessian, counts, inside, evaluate, scores };
 }

@@ -37,7 +37,7 @@ export function fitFamilies(problem: Problem, wanted: readonly Family[]): Fitted
 }
 
 /** Fits one family from given free coordinates. */
-export function fitFrom(problem: Problem, family: Family, start: Float64Array): Fitted {
+function fitFrom(problem: Problem, family: Family, start: Float64Array): Fitted {
   const likelihood = logLikelihood(problem.terms, problem.laid, family);
   return { family, likelihood, maximum: maximise(likelihood, start, { inside: likelihood.inside }) };
 }

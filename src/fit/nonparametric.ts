@@ -1,13 +1,14 @@
 import { type Config, rulesOf } from '../config.js';
 import { normalQuantile } from '../math/chi-square.js';
 import type { NonparametricPoint, ProductRecords } from '../records.js';
-import { ageEdges, fromAges, fromCohorts, monthlyEdges, type Observed, oldestAtRisk } from './kernels.js';
+import { ageEdges, binEdges, fromAges, fromCohorts, type Observed, oldestAtRisk } from './kernels.js';
 import { cappedAges } from './terms.js';
 
-const level = 0.95;
+/** Level of the pointwise interval. */
+export const nonparametricLevel = 0.95;
 
 /**
- * Self-consistent estimate of the share returned by age (SPEC 6.7): a density that is constant within each bin of age, in
+ * Self-consistent estimate of the share returned by age (after Turnbull 1976): a density that is constant within each bin of age, in
  * which each cell and survivor contributes its kernel, by the EM algorithm. With exact ages it is the product-limit
  * estimate (Kaplan & Meier 1958). The interval is Greenwood's on the log(−log) scale with the expected returns and
  * units at risk of the last step.
@@ -18,7 +19,7 @@ export function nonparametricEstimate(config: Config, records: ProductRecords): 
     const edges = ageEdges(ages);
     return pointsOf(edges, Infinity, selfConsistent(fromAges(ages, edges), edges.length - 1));
   }
-  const edges = monthlyEdges(config, records);
+  const edges = binEdges(config, records);
   const counts = selfConsistent(fromCohorts(config, records, edges), edges.length - 1);
   return pointsOf(edges, oldestAtRisk(config, records), counts);
 }
@@ -95,7 +96,7 @@ function survivalOf(mass: Float64Array): Float64Array {
 }
 
 function pointsOf(edges: readonly number[], oldest: number, counts: BinCounts): NonparametricPoint[] {
-  const z = normalQuantile(0.5 + level / 2);
+  const z = normalQuantile(0.5 + nonparametricLevel / 2);
   let logSurvival = 0;
   let variance = 0;
   const points: NonparametricPoint[] = [];

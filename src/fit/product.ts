@@ -1,5 +1,7 @@
 import { daysPerMonth } from '../calendar.js';
 import { type Config, cutOffOf, rulesOf } from '../config.js';
+import { productCounts } from '../counts.js';
+import { freeOf } from '../families/family.js';
 import { familyNamed } from '../families/index.js';
 import { familyLabel } from '../family-label.js';
 import type { CandidateFit, Curve, FitProduct, NotForecast, ProductRecords } from '../records.js';
@@ -7,7 +9,7 @@ import { rankCandidates } from './choice.js';
 import { betterRuledOut, leavesEstimate, ruledOutAhead, steepShape } from './findings.js';
 import { binWidth } from './kernels.js';
 import { fitFamilies, typicalAges } from './maximum.js';
-import { nonparametricEstimate } from './nonparametric.js';
+import { nonparametricEstimate, nonparametricLevel } from './nonparametric.js';
 import { withChosenShares } from './selection.js';
 import { layTerms, type Terms, termsOf } from './terms.js';
 
@@ -24,10 +26,7 @@ export function fitProduct(config: Config, records: ProductRecords): FitProduct 
   const notForecast = reasonNot(records, terms, candidates);
   const nonparametric = nonparametricEstimate(config, records);
   return {
-    product: records.product,
-    segment: records.segment,
-    resolution: records.resolution,
-    ...unitCounts(records),
+    ...productCounts(records),
     oldestAge,
     delayDays: rules.delayDays,
     delayReason: rules.delayReason,
@@ -42,6 +41,7 @@ export function fitProduct(config: Config, records: ProductRecords): FitProduct 
     ],
     candidates,
     nonparametric,
+    nonparametricLevel,
     curves: candidates
       .filter((candidate) => candidate.converged)
       .map((candidate) => curve(candidate, oldestAge, rules.delayDays, records.resolution !== 'age')),
@@ -97,19 +97,6 @@ function roughUntil(config: Config, records: ProductRecords): number {
   return records.resolution === 'age' ? 0 : 2 * Math.max(daysPerMonth, binWidth(config, records));
 }
 
-function unitCounts(
-  records: ProductRecords,
-): Pick<FitProduct, 'units' | 'returns' | 'withdrawn' | 'survivors'> {
-  const sum = (items: readonly { readonly quantity: number }[]) =>
-    items.reduce((n, item) => n + item.quantity, 0);
-  const aged = (outcome: string) => sum(records.ages.filter((group) => group.outcome === outcome));
-  const shipped = records.cohorts.reduce((n, cohort) => n + cohort.shipped, 0);
-  const returns = sum(records.returned) + aged('returned');
-  const withdrawn = sum(records.withdrawn);
-  const units = shipped + aged('returned') + aged('surviving');
-  return { units, returns, withdrawn, survivors: units - returns - withdrawn };
-}
-
 function oldestAgeOf(config: Config, records: ProductRecords): number {
   if (records.resolution === 'age')
     return records.ages.reduce((oldest, group) => Math.max(oldest, group.to), 0);
@@ -123,9 +110,7 @@ function oldestAgeOf(config: Config, records: ProductRecords): number {
  */
 function curve(candidate: CandidateFit, oldestAge: number, delay: number, dated: boolean): Curve {
   const family = familyNamed(candidate.family);
-  const life = family.at(
-    family.free(family.parameterNames.map((name) => candidate.parameters[name] as number)),
-  );
+  const life = family.at(freeOf(family, candidate.parameters));
   const end = 1.5 * oldestAge;
   const half = 0.5 * daysPerMonth;
   const step = dated ? half * Math.ceil(end / half / curveSteps) : end / curveSteps;

@@ -1,3 +1,4 @@
+import { freeOf } from '../families/family.js';
 import { familyNamed } from '../families/index.js';
 import type { CandidateFit } from '../records.js';
 import { aicc } from './choice.js';
@@ -18,7 +19,7 @@ export function withChosenShares(
   const standing = candidates.filter((candidate) => candidate.ruledOut === null);
   const contests = standing.map((candidate) => {
     const family = familyNamed(candidate.family);
-    const best = family.free(family.parameterNames.map((name) => candidate.parameters[name] as number));
+    const best = freeOf(family, candidate.parameters);
     const { counts, refit } = refitter(terms, family, best);
     const score = (weights: Float64Array) => {
       const value = refit(weights)?.value;

@@ -1,4 +1,5 @@
 import { type Config, cutOffOf, rulesOf, warrantyLimit } from '../config.js';
+import { survivorsByCohort } from '../counts.js';
 import { type AgeGrid, ageGrid, type Precision } from '../exposure/grid.js';
 import {
   type LaidWindows,
@@ -26,7 +27,7 @@ export interface Terms {
   readonly aged: readonly AgeGroup[];
   /** Units behind each term: returned, then kept, then aged. */
   readonly counts: Float64Array;
-  /** Number of returned units, d of SPEC 6.4. */
+  /** Number of returned units, the sample size of the choice. */
   readonly returns: number;
 }
 
@@ -35,19 +36,17 @@ export function termsOf(config: Config, records: ProductRecords): Terms {
   const rules = rulesOf(config, records.product);
   const returned = new Map<string, [Window, number]>();
   const kept = new Map<string, [Window, number]>();
-  const gone = new Float64Array(records.cohorts.length);
   for (const cell of records.returned) {
     const cohort = records.cohorts[cell.cohort] as (typeof records.cohorts)[number];
     count(returned, returnedWithin(cohort, cell, warrantyLimit(rules, cohort.from)), cell.quantity);
-    gone[cell.cohort] = (gone[cell.cohort] as number) + cell.quantity;
   }
   for (const cell of records.withdrawn) {
     const cohort = records.cohorts[cell.cohort] as (typeof records.cohorts)[number];
     count(kept, returnedBeforeExit(cohort, cell, warrantyLimit(rules, cohort.from)), cell.quantity);
-    gone[cell.cohort] = (gone[cell.cohort] as number) + cell.quantity;
   }
+  const left = survivorsByCohort(records);
   records.cohorts.forEach((cohort, i) => {
-    const survivors = cohort.shipped - (gone[i] as number);
+    const survivors = left[i] as number;
     if (survivors === 0) return;
     count(kept, returnedBy(cohort, cutOffOf(config), warrantyLimit(rules, cohort.from)), survivors);
   });

@@ -16,7 +16,7 @@ export interface PredictiveCounts {
 }
 
 /**
- * SPEC 6.6: for each draw of the parameters a multinomial draw over the columns within each group, summed over groups, so
+ * For each draw of the parameters a multinomial draw over the columns within each group, summed over groups, so
  * that periods, cumulative and totals come from the same draws. Draw b depends on the seed words and b alone.
  */
 export function predictiveCounts(exposed: Exposed, parameters: ParameterDraws): PredictiveCounts {

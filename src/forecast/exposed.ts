@@ -32,7 +32,7 @@ export interface Expectation {
   readonly untilWarrantyEnds: number;
 }
 
-/** SPEC 6.5 for given chances: Σ units · P / S. */
+/** Expected returns for given chances: Σ units · P / S. */
 export function expectation(exposed: Exposed, chances: Float64Array): Expectation {
   const periods = new Float64Array(exposed.periods);
   const planned = new Float64Array(exposed.periods);

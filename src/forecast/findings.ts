@@ -6,7 +6,7 @@ import type { CandidateForecast, Finding, ForecastPeriod, PredictedCount } from 
 /** Weight of the candidates outside the interval from which on it is worth a warning. */
 const noticedWeight = 0.1;
 
-/** Mean of the predictive distribution and plug-in figure differ by more than 5 % (SPEC 5), over the horizon or until warranty ends. */
+/** Mean of the predictive distribution and plug-in figure differ by more than 5 % over the horizon or until warranty ends. */
 export function plugInFinding(
   periods: readonly ForecastPeriod[],
   untilWarrantyEnds: PredictedCount | null,

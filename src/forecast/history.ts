@@ -1,7 +1,6 @@
 import { type Config, cutOffOf, rulesOf, warrantyLimit } from '../config.js';
-import { ageGrid } from '../exposure/grid.js';
-import { integralsOn, windowProbability } from '../exposure/integrals.js';
-import { layWindows, returnedBy, type Window } from '../exposure/window.js';
+import { momentsOf } from '../exposure/moments.js';
+import { returnedBy } from '../exposure/window.js';
 import type { Family } from '../families/family.js';
 import type { Cell, HistoryPeriod, ProductRecords } from '../records.js';
 import { firstAndLast, pastColumns } from './columns.js';
@@ -42,7 +41,12 @@ function expectedByPeriod(
   ends: readonly number[],
 ): Float64Array {
   const expected = new Float64Array(ends.length - 1);
-  const outside = survivalAt(config, records, chosen, ends);
+  const rules = rulesOf(config, records.product);
+  const windows = records.cohorts.map((cohort) =>
+    ends.map((end) => returnedBy(cohort, end, warrantyLimit(rules, cohort.from))),
+  );
+  const { rows, evaluate } = momentsOf(windows, rules.delayDays, 'fit');
+  const { outside } = evaluate(chosen.family.jetsAt(chosen.free));
   const exits = exitsByCohort(records);
   records.cohorts.forEach((cohort, i) => {
     let atRisk = cohort.shipped;
@@ -51,45 +55,14 @@ function expectedByPeriod(
       for (; next < gone.length && (gone[next] as Cell).to <= (ends[j] as number); next++) {
         atRisk -= (gone[next] as Cell).quantity;
       }
-      const [before, after] = [outside(i, j), outside(i, j + 1)];
+      const [before, after] = [0, 1].map((step) => outside[rows[i]?.[j + step] as number]) as [
+        number,
+        number,
+      ];
       if (before > 0) add(expected, j, (atRisk * (before - after)) / before);
     }
   });
   return expected;
-}
-
-/** Survival of cohort i to moment j. */
-function survivalAt(
-  config: Config,
-  records: ProductRecords,
-  { family, free }: { readonly family: Family; readonly free: Float64Array },
-  moments: readonly number[],
-): (i: number, j: number) => number {
-  const rules = rulesOf(config, records.product);
-  const windows = new Map<string, Window>();
-  const keys = records.cohorts.map((cohort) =>
-    moments.map((moment) => {
-      const window = returnedBy(cohort, moment, warrantyLimit(rules, cohort.from));
-      windows.set(window.key, window);
-      return window.key;
-    }),
-  );
-  const list = [...windows.values()];
-  const grid = ageGrid(
-    list.flatMap((window) => window.knots),
-    rules.delayDays,
-    'draw',
-  );
-  const laid = layWindows(list, grid);
-  const integrals = integralsOn(grid, 0, false);
-  integrals.evaluate(family.jetsAt(free));
-  const block = new Float64Array(1);
-  const survival = new Map<string, number>();
-  list.forEach((window, w) => {
-    windowProbability(laid, w, integrals, 'outside', block);
-    survival.set(window.key, block[0] as number);
-  });
-  return (i, j) => survival.get(keys[i]?.[j] ?? '') ?? 1;
 }
 
 /** Returned and withdrawn cells by cohort, in the order of their ends. */

@@ -1,6 +1,7 @@
 import { parseIsoDate } from '../calendar.js';
 import { type Config, type ProductRules, rulesOf } from '../config.js';
 import { type Precision, precisionFor } from '../exposure/grid.js';
+import { freeOf } from '../families/family.js';
 import { familyNamed } from '../families/index.js';
 import type {
   CandidateFit,
@@ -29,6 +30,16 @@ export interface ProductDraws {
   readonly counts: Pick<PredictiveCounts, 'counts' | 'columns'> | null;
 }
 
+/** What there is of a product that is not forecast. */
+const nothing = {
+  chosen: null,
+  method: null,
+  periods: [],
+  untilWarrantyEnds: null,
+  ifRejectedWereReal: null,
+  findings: [],
+};
+
 /** A label and its days; without a calendar, the number of a step of use. */
 type Step = Pick<Column, 'label' | 'partial'> & { readonly days: Column['days'] | null };
 
@@ -52,17 +63,13 @@ export function forecastProduct(
   };
   if ('code' in draws) {
     const history = historyOf(config, records, null);
-    const empty = {
-      method: null,
-      periods: [],
-      untilWarrantyEnds: null,
-      ifRejectedWereReal: null,
-      findings: [],
-    };
-    return { product: { ...shared, ...empty, chosen: null, notForecast: draws, history }, counts: null };
+    return { product: { ...shared, ...nothing, notForecast: draws, history }, counts: null };
   }
   const family = familyNamed(draws.family);
-  const best = freeOf(fit.candidates.find((c) => c.family === family.name) as CandidateFit);
+  const best = freeOf(
+    family,
+    (fit.candidates.find((c) => c.family === family.name) as CandidateFit).parameters,
+  );
   const plugIn = expectation(exact, exact.chances(family.jetsAt(best)));
   const predicted = predictiveCounts(exposedOf(config, records, steps, precisionFor(family, best)), draws);
   const periods = periodsOf(config, records, steps, plugIn, predicted);
@@ -105,13 +112,9 @@ function exposedOf(
   return exposedCohorts(config, records, steps as Column[], precision);
 }
 
-function freeOf(candidate: CandidateFit): Float64Array {
-  const family = familyNamed(candidate.family);
-  return family.free(family.parameterNames.map((name) => candidate.parameters[name] as number));
-}
-
 function byCandidate(candidate: CandidateFit, exposed: Exposed): CandidateForecast {
-  const jets = familyNamed(candidate.family).jetsAt(freeOf(candidate));
+  const family = familyNamed(candidate.family);
+  const jets = family.jetsAt(freeOf(family, candidate.parameters));
   const { periods, untilWarrantyEnds } = expectation(exposed, exposed.chances(jets));
   return {
     family: candidate.family,

@@ -5,7 +5,7 @@ import type { ProductRules } from '../config.js';
 export type OutOfBounds = 'beyond-warranty' | 'before-delay';
 
 /**
- * Tells whether no unit of a cohort can be returned within `cell` (SPEC 6.2): every age possible there is at or above the
+ * Tells whether no unit of a cohort can be returned within `cell`: every age possible there is at or above the
  * warranty limit, or none is above the delay. Null when some return is possible.
  * @param limit age in days at which warranty ends, Infinity without a limit.
  */

@@ -16,7 +16,7 @@ const origin = {
     'returns without an origin cannot be used; give unit, or product and ship_date, or name them in columns',
 };
 
-/** Fields by role (SPEC 3.2). */
+/** Fields by role. */
 export const roleFields: Readonly<Record<InputRole, RoleFields>> = {
   shipments: {
     required: ['product', 'ship_date'],

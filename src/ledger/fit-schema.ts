@@ -52,6 +52,7 @@ const product: z.ZodType<FitProduct> = z.looseObject({
   notForecast,
   findings,
   candidates: z.array(candidate),
+  nonparametricLevel: z.number(),
   nonparametric: z.array(
     z.looseObject({ age: real, probability: real, lower: real, upper: real, atRisk: real }),
   ),

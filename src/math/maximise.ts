@@ -149,7 +149,8 @@ function walk(
   return null;
 }
 
-function withinBounds(point: Float64Array): boolean {
+/** Coordinates are often logs: beyond this their exponentials overflow. */
+export function withinBounds(point: Float64Array): boolean {
   return point.every((x) => Math.abs(x) <= 650);
 }
 

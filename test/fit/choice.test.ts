@@ -1,4 +1,4 @@
-/** Ranking, weights and the reasons for ruling a candidate out (SPEC 6.4). */
+/** Ranking, weights and the reasons for ruling a candidate out. */
 import { expect, test } from 'vitest';
 import { aicc, bic } from '../../src/fit/choice.js';
 import { fitProduct } from '../../src/fit/product.js';
@@ -28,7 +28,7 @@ test('candidates are ranked by AICc and weighted by exp(−Δ/2)', () => {
   expect(candidates.reduce((sum, c) => sum + (c.chosenShare as number), 0)).toBeCloseTo(1, 9);
 });
 
-test('weights of Weibull and lognormal on the bearing cages, log likelihoods .15 apart (METHODS: .54 and .46, computed)', () => {
+test('weights of Weibull and lognormal on the bearing cages, log likelihoods .15 apart (.54 and .46, computed elsewhere)', () => {
   const config = configWith({ candidates: ['weibull', 'lognormal'] });
   const { candidates } = fitProduct(config, agedProduct('c', agesOf('bearingcage')));
   expect(candidates.map((c) => [c.family, Math.round(100 * c.weight)])).toEqual([

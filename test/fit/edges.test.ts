@@ -142,7 +142,8 @@ test('likelihood-ratio intervals stand at nine million returns', () => {
     })),
   );
   const fit = fitProduct(config, datedProduct('H', cohorts, cells));
-  for (const { family, intervals } of fit.candidates) {
+  for (const { family, intervals, parameterCount } of fit.candidates) {
+    expect(Object.keys(intervals), family).toHaveLength(parameterCount);
     for (const [name, { lower, upper }] of Object.entries(intervals)) {
       expect(lower, `${family} ${name}`).not.toBeNull();
       expect(upper, `${family} ${name}`).not.toBeNull();

@@ -1,6 +1,6 @@
 /**
  * Source: test/reference/warranty.json, invented records with a warranty limit, withdrawals and a delay; the log
- * likelihood of SPEC 6.2 at given parameters in closed form with mpmath and by quadrature with SciPy, which agree to 1e-11.
+ * likelihood at given parameters in closed form with mpmath and by quadrature with SciPy, which agree to 1e-11.
  */
 import { describe, expect, test } from 'vitest';
 import { logLikelihood } from '../../src/fit/likelihood.js';

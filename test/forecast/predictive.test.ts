@@ -51,7 +51,7 @@ test('bearing cages: the refits themselves, without the pivotal form, give about
   expect(upper).toBeLessThanOrEqual(13);
 });
 
-test('a constant rate: the interval is that of the exact limits for the count (METHODS, constant rate, r = 20, T2 = T1: 11 to 32)', () => {
+test('a constant rate: the interval is that of the exact limits for the count (conditional binomial, computed: r = 20, T2 = T1: 11 to 32)', () => {
   const exact = agedProduct('rate', [
     { outcome: 'returned', from: 50, to: 50, exact: true, quantity: 20 },
     { outcome: 'surviving', from: 100, to: 100, exact: true, quantity: 1_000_000 },

@@ -1,7 +1,7 @@
 /**
  * The predictive distribution of a fitted product until warranty ends, and of the sum of two products: identities between
  * the draws and what is printed of them. Records: test/reference/warranty.json; quantile p is the smallest y with
- * G(y) ≥ p (SPEC 5), counted here without sorting.
+ * G(y) ≥ p, counted here without sorting.
  */
 import { describe, expect, test } from 'vitest';
 import { drawsForForecast } from '../../src/fit/drawn.js';

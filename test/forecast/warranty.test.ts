@@ -1,6 +1,6 @@
 /**
  * Source: test/reference/warranty.json, invented records with a warranty limit, withdrawals, a delay and a plan; expected
- * returns (SPEC 6.5), returns until warranty ends and the fitted line of the history at given parameters, in closed form
+ * returns, returns until warranty ends and the fitted line of the history at given parameters, in closed form
  * with mpmath and by quadrature with SciPy, which agree to 1e-11.
  */
 import { describe, expect, test } from 'vitest';
@@ -88,7 +88,7 @@ describe.each(loadWarranty())('$name', (scenario) => {
             ),
           ),
         );
-        near(fitted, answer.fitted[j] as number, 'fittedLine', `period ${j}`);
+        near(fitted, answer.fitted[j] as number, 'expectedReturns', `period ${j}`);
       });
     });
   });

@@ -90,6 +90,7 @@ const fit: FitDocument = {
       },
     ],
     nonparametric: [{ age: 5, probability: 0.1, lower: 0, upper: 0.3, atRisk: 9 }],
+    nonparametricLevel: 0.95,
     curves: [{ family: 'weibull', atRisk: null, ages: [1, 2], probability: [0.1, 0.2] }],
   })),
 };

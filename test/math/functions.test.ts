@@ -9,7 +9,6 @@ import { logErfc, logNormalSurvival, normalHazard } from '../../src/math/erf.js'
 import { digamma, logGamma, logIncompleteGamma, trigamma } from '../../src/math/gamma.js';
 import { cholesky, invertPositive } from '../../src/math/linear.js';
 import { doubleExponential, gaussLegendre } from '../../src/math/quadrature.js';
-import { findRoot } from '../../src/math/root.js';
 
 test('erfc, printed values (A&S table 7.1: erf 0.5 = 0.5204998778, erf 1 = 0.8427007929, erf 2 = 0.9953222650)', () => {
   expect(1 - Math.exp(logErfc(0.5))).toBeCloseTo(0.5204998778, 10);
@@ -82,9 +81,4 @@ test('Cholesky refuses what is not positive definite, and inverts what is', () =
   expect(cholesky(Float64Array.of(1, 2, 2, 1), 2)).toBeNull();
   const inverse = invertPositive(Float64Array.of(4, 1, 1, 3), 2) as Float64Array;
   expect(Array.from(inverse, (x) => Number((11 * x).toFixed(12)))).toEqual([3, -1, -1, 4]);
-});
-
-test('a root is found to its tolerance, a bracket without a sign change is refused', () => {
-  expect(findRoot((x) => x ** 3 - 2, 0, 5, 1e-13)).toBeCloseTo(Math.cbrt(2), 12);
-  expect(() => findRoot((x) => x * x + 1, -1, 1, 1e-9)).toThrow(/invalid bracket/);
 });

@@ -7,8 +7,6 @@ export const tolerances = {
   tail: { relative: 1e-10 },
   cellProbability: { relative: 1e-9 },
   expectedReturns: { relative: 1e-6 },
-  /** A line to look at: it is computed on the grid of the draws, which is made for 1e-3. */
-  fittedLine: { relative: 1e-3 },
 } as const satisfies Record<string, Tolerance>;
 
 export type Tolerance = { readonly relative: number } | { readonly absolute: number };

@@ -130,6 +130,7 @@ function fitProduct(product: FixtureProduct, table: IntakeProduct): FitProduct {
         : [],
     candidates: product.missing ? [] : fixtureCandidates(product.shape, product.scale),
     nonparametric: product.missing ? [] : fixturePoints(product.shape, product.scale, product.months, units),
+    nonparametricLevel: 0.95,
     curves: product.missing ? [] : fixtureCurves(product.shape, product.scale, product.months),
   };
 }
