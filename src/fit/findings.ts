@@ -2,6 +2,7 @@ import { freeOf } from '../families/family.js';
 import { familyNamed } from '../families/index.js';
 import { familyLabel } from '../family-label.js';
 import type { CandidateFit, Finding, NonparametricPoint } from '../records.js';
+import { nonparametricLevel } from './nonparametric.js';
 
 /** Share of the ages outside the nonparametric interval from which on a curve is said to leave it. */
 const noticed = 0.2;
@@ -74,7 +75,7 @@ export function leavesEstimate(
   });
   if (outside.length < 2 || outside.length < noticed * judged.length) return [];
   const message =
-    `the chosen ${familyLabel(best.family)} distribution lies well outside the 95 % interval of the nonparametric estimate at ` +
+    `the chosen ${familyLabel(best.family)} distribution lies well outside the ${Math.round(100 * nonparametricLevel)} % interval of the nonparametric estimate at ` +
     `${outside.length} of ${judged.length} ages: the records have another shape than any candidate, such as a share of the ` +
     'units that alone can fail, or units of several kinds; look at the curves before using the forecast';
   return [{ code: 'curve-leaves-estimate', severity: 'warning', message }];
