@@ -1,7 +1,6 @@
-import { UTCDate } from '@date-fns/utc';
-import { format, parse } from 'date-fns';
 import * as z from 'zod';
 import { parseIsoDate } from '../calendar.js';
+import { judgePattern } from '../date-pattern.js';
 
 // Every message below says what is allowed; it ends the sentence "invalid NAME VALUE, allowed …".
 
@@ -19,7 +18,7 @@ export const currencyCode = checkedText('an ISO 4217 code of three capital lette
 /** A date-fns pattern that carries at least the year and the week, month or quarter. */
 export const datePattern = checkedText(
   'a date-fns pattern with a year and a day, week, month or quarter, such as dd.MM.yyyy (not DD.MM.YYYY), without zone (X, x, O, z), instant (T, t) or locale (P, p)',
-  carriesDate,
+  (t) => 'grain' in judgePattern(t),
 );
 
 /** A WHATWG label of an encoding. */
@@ -51,24 +50,6 @@ export function distinct<T extends z.ZodType>(item: T, allowed: string, most = 1
 
 function checkedText(allowed: string, holds: (text: string) => boolean) {
   return z.string(allowed).refine(holds, allowed);
-}
-
-/**
- * Writes a known date with the pattern and reads it again; at most the place within the quarter may be lost. `D` and
- * `Y`, day of the year and local week-year, are taken for `d` and `y` by mistake; zones and instants may change the date as
- * it is written, and a locale's own pattern depends on the locale.
- */
-function carriesDate(pattern: string): boolean {
-  if (/[DYXxOzTtPp]/.test(pattern.replaceAll(/'[^']*'/g, ''))) return false;
-  const date = new UTCDate(Date.UTC(2003, 10, 25));
-  try {
-    const read = parse(format(date, pattern), pattern, new UTCDate(Date.UTC(2000, 0, 1)));
-    const lostDays = (date.getTime() - read.getTime()) / 86_400_000;
-    return lostDays >= 0 && lostDays < 92;
-  } catch (error) {
-    if (error instanceof RangeError) return false;
-    throw error;
-  }
 }
 
 function isEncoding(label: string): boolean {

@@ -1,6 +1,7 @@
 import { describe, expect, test } from 'vitest';
 import { dayNumber, isoDate } from '../../src/calendar.js';
 import { dateReader } from '../../src/ingest/dates.js';
+import { datePattern } from '../../src/settings/values.js';
 
 function read(text: string, dateFormat: string | null = null): string {
   const date = dateReader(dateFormat)(text);
@@ -109,6 +110,23 @@ describe('a date-fns pattern', () => {
   test.each(['yyyy', 'YYYY-MM-DD', 'dd.MM.yyyy n', 'dd.MM.', 'xx', ''])('%s is refused', (pattern) => {
     expect(() => dateReader(pattern)).toThrow(`invalid dateFormat ${pattern}`);
   });
+
+  // None of them tells one day from all others of its year.
+  test.each(['EEE yyyy', 'EEEE yyyy', 'yyyy d', 'i RRRR', 'yyyy MM EEE', 'yyyy w'])(
+    '%s, which names a day without its place in the year, is refused by the records and by the settings',
+    (pattern) => {
+      expect(() => dateReader(pattern)).toThrow(`invalid dateFormat ${pattern}`);
+      expect(datePattern.safeParse(pattern).success).toBe(false);
+    },
+  );
+
+  test.each(["d 'o''clock D' M yyyy", "dd.MM.yyyy 'x", "i'. of' II RRRR"])(
+    '%s, with refused letters in quotes or a weekday beside its week, is accepted by both',
+    (pattern) => {
+      expect(() => dateReader(pattern)).not.toThrow();
+      expect(datePattern.safeParse(pattern).success).toBe(true);
+    },
+  );
 });
 
 test('equal days and grain have equal keys, others have not', () => {
