@@ -1,4 +1,5 @@
 /** Intervals of a predicted count, read from its quantiles and put into words. */
+import { intervalKeys } from '../quantiles.js';
 import type { PredictedCount } from '../records.js';
 import { countText, percentText, rangeText } from './numbers.js';
 
@@ -7,8 +8,8 @@ export function intervalOf(
   count: PredictedCount,
   level: number,
 ): { lower: number | null; upper: number | null } {
-  const at = (probability: number) => count.quantiles[quantileKey(probability)] ?? null;
-  return { lower: at((1 - level) / 2), upper: at((1 + level) / 2) };
+  const [lower, upper] = intervalKeys(level);
+  return { lower: count.quantiles[lower] ?? null, upper: count.quantiles[upper] ?? null };
 }
 
 /** `between 24 and 39 (80 %)`. */
@@ -27,9 +28,4 @@ export function probablyText(count: PredictedCount, level: number): string {
 export function intervalText(count: PredictedCount, level: number): string {
   const { lower, upper } = intervalOf(count, level);
   return rangeText(lower, upper);
-}
-
-/** The key of a probability in `quantiles`: six decimals at most, no trailing zeros. */
-function quantileKey(probability: number): string {
-  return String(Number(probability.toFixed(6)));
 }

@@ -1,7 +1,6 @@
 import fc from 'fast-check';
 import { expect, test } from 'vitest';
 import { jsonText } from '../../src/ledger/json.js';
-import { quantileKey } from '../../src/quantiles.js';
 
 test('a document has its keys as built, lists of numbers on one line, and null for what is not finite', () => {
   const document = {
@@ -30,15 +29,4 @@ test('doubles are written in full', () => {
       expect(JSON.parse(jsonText([x]))[0]).toBe(x === 0 ? 0 : x);
     }),
   );
-});
-
-test('keys of quantiles are rounded to six decimals without trailing zeros', () => {
-  expect([(1 - 0.8) / 2, 0.5, (1 + 0.95) / 2, 0.1 + 0.2, 0.0000049, 0.999999].map(quantileKey)).toEqual([
-    '0.1',
-    '0.5',
-    '0.975',
-    '0.3',
-    '0.000005',
-    '0.999999',
-  ]);
 });
