@@ -1,7 +1,7 @@
 import { isoDate } from '../calendar.js';
 import { csvLine } from '../csv.js';
 import type { Cell, Cohort, ProductRecords } from '../records.js';
-import { segmentText } from './names.js';
+import { segmentText } from '../segment.js';
 
 /** Columns of `cells.csv`. */
 export const cellColumns = [

@@ -1,7 +1,7 @@
 import { intervalKeys } from '../quantiles.js';
 import type { ForecastPeriod, ForecastProduct, PredictedCount } from '../records.js';
+import { segmentText } from '../segment.js';
 import { minorDigits, toUnits } from './money.js';
-import { segmentText } from './names.js';
 
 /** A row of forecast.csv before it is written. */
 export interface ForecastRow {

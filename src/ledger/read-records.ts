@@ -1,7 +1,7 @@
 import type { Cell, Cohort, IntakeDocument, IntakeProduct, ProductRecords } from '../records.js';
+import { productKey, segmentText } from '../segment.js';
 import { alteredFile } from './altered.js';
 import { cellColumns } from './cells.js';
-import { productKey, segmentText } from './names.js';
 import { readLeftCsv } from './read-csv.js';
 import { byRange, type CellRow, quantityIn, rangeIn, rangeKey } from './read-range.js';
 

@@ -1,9 +1,9 @@
 import type { FileAccount, IntakeDocument, MonthEnd, RejectRow, RunDocument } from '../records.js';
+import { productKey, segmentText } from '../segment.js';
 import { alteredFile, missingFile } from './altered.js';
 import { fitSchema } from './fit-schema.js';
 import { forecastSchema } from './forecast-schema.js';
 import { intakeSchema } from './intake-schema.js';
-import { productKey, segmentText } from './names.js';
 import { readLeftCsv } from './read-csv.js';
 import { readDocument } from './read-json.js';
 import { readRecords } from './read-records.js';

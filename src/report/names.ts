@@ -1,6 +1,7 @@
 /** Names of products and of their pages. */
 import { createHash } from 'node:crypto';
 import type { Segment } from '../records.js';
+import { segmentText } from '../segment.js';
 
 /** `HV-200`, or `HV-200, plant=X; region=Y` for a part of a product. */
 export function productName(product: string, segment: Segment | null): string {
@@ -17,10 +18,4 @@ export function slugOf(product: string, segment: Segment | null): string {
   const base = letters.replace(/^-/, '').slice(0, 60).replace(/-$/, '');
   const digest = createHash('sha256').update(identity, 'utf8').digest('hex');
   return `${base === '' ? 'product' : base}-${digest.slice(0, 8)}`;
-}
-
-function segmentText(segment: Segment): string {
-  return Object.entries(segment)
-    .map(([column, value]) => `${column}=${value}`)
-    .join('; ');
 }

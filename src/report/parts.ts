@@ -10,6 +10,7 @@ import type {
   NotForecast,
   Segment,
 } from '../records.js';
+import { productKey, segmentText } from '../segment.js';
 import { productName, slugOf } from './names.js';
 
 /** The finished documents of a run; those of stages that did not run are null. */
@@ -60,5 +61,5 @@ function byProduct<T extends { readonly product: string; readonly segment: Segme
 }
 
 function identity(item: { readonly product: string; readonly segment: Segment | null }): string {
-  return JSON.stringify([item.product, item.segment]);
+  return productKey(item.product, segmentText(item.segment));
 }

@@ -1,5 +1,5 @@
-import { segmentText } from '../../ledger/names.js';
 import type { Segment } from '../../records.js';
+import { segmentText } from '../../segment.js';
 import { printable } from './text.js';
 
 /** A product as a terminal shows it: `HV-200` or `HV-200 (plant=X)`. */

@@ -1,13 +1,13 @@
-import type { Segment } from '../records.js';
+import type { Segment } from './records.js';
 
-/** `plant=X; region=Y`, as CSV files name a segment; empty when there is none. */
+/** `plant=X; region=Y`, as CSV files and readers name a segment; empty when there is none. */
 export function segmentText(segment: Segment | null): string {
   return Object.entries(segment ?? {})
     .map(([column, value]) => `${column}=${value}`)
     .join('; ');
 }
 
-/** One text for a product and its segment, different for different ones. */
+/** One text for a product and its segment (as `segmentText` gives it), different for different ones. */
 export function productKey(product: string, segment: string): string {
   return JSON.stringify([product, segment]);
 }
