@@ -61,10 +61,6 @@ export function parseIsoDate(text: string): number | null {
   return dayNumber(year, month, day);
 }
 
-export function daysInMonth(year: number, month: number): number {
-  return dayNumber(year, month + 1, 1) - dayNumber(year, month, 1);
-}
-
 /** `day` moved by whole calendar months; a day that the month lacks becomes its last. */
 export function addMonths(day: number, months: number): number {
   const date = civilDate(day);
@@ -119,6 +115,10 @@ export function periodsIn(range: DayRange, kind: PeriodKind): DayRange[] {
     day = period.to;
   }
   return periods;
+}
+
+function daysInMonth(year: number, month: number): number {
+  return dayNumber(year, month + 1, 1) - dayNumber(year, month, 1);
 }
 
 /** 0 for Monday … 6 for Sunday; day 0 was a Thursday. */

@@ -3,12 +3,7 @@
  * apostrophe, and so does text that begins with an apostrophe, so that reading removes exactly one.
  */
 
-/** A text cell, protected; numbers are written with `String` and never pass through here. */
-export function protectText(text: string): string {
-  return /^[=+\-@\t\r']/.test(text) ? `'${text}` : text;
-}
-
-/** The text that `protectText` was given. */
+/** The text that was written into a cell of `csvLine`. */
 export function unprotectText(cell: string): string {
   return cell.startsWith("'") ? cell.slice(1) : cell;
 }
@@ -16,13 +11,6 @@ export function unprotectText(cell: string): string {
 /** One line with its line feed: text is protected and quoted where needed, numbers are as they are, null is empty. */
 export function csvLine(cells: readonly (string | number | null)[]): string {
   return `${cells.map(cellText).join(',')}\n`;
-}
-
-function cellText(cell: string | number | null): string {
-  if (cell === null) return '';
-  if (typeof cell === 'number') return String(cell);
-  const text = protectText(cell);
-  return /[",\r\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text;
 }
 
 /** Fields as a CSV row without the line end and without protection, for showing a row as it was read. */
@@ -39,4 +27,15 @@ export function compareText(a: string, b: string): number {
     if (difference !== 0) return difference;
   }
   return x.length - y.length;
+}
+
+function cellText(cell: string | number | null): string {
+  if (cell === null) return '';
+  if (typeof cell === 'number') return String(cell);
+  const text = protectText(cell);
+  return /[",\r\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text;
+}
+
+function protectText(text: string): string {
+  return /^[=+\-@\t\r']/.test(text) ? `'${text}` : text;
 }

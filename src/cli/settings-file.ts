@@ -31,8 +31,7 @@ export function hasInput(settings: string | null, flags: Flags): boolean {
   return settings !== null || existsSync(defaultSettings) || namesInputs(flags);
 }
 
-/** True when the flags name any file of records. */
-export function namesInputs(flags: Flags): boolean {
+function namesInputs(flags: Flags): boolean {
   const { shipments, returns, withdrawals, plan, table, tableWithdrawn, ages } = flags;
   return [shipments, returns, withdrawals, plan, table, tableWithdrawn, ages].some(
     (paths) => paths !== undefined,

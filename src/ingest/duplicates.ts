@@ -7,7 +7,7 @@ import { readShipments, type ShipmentRow } from './shipments.js';
 import { type FileTally, newTally, type RowRef, rejectRow } from './tally.js';
 
 /** More units than this that seem to come twice are no slips: a file is given twice, or the column is no serial. */
-export const mostSuspects = 250_000;
+const mostSuspects = 250_000;
 
 interface Suspect {
   readonly shipment: ShipmentRow;
@@ -25,7 +25,7 @@ export interface Duplicates {
 /**
  * Reads the shipments again for the units whose fingerprint came more than once, compares their serials, and rejects: of rows
  * that say the same, all but the first by text; of rows that contradict each other, all.
- * @throws UserError exit 3 when more than `mostSuspects` units come more than once.
+ * @throws UserError exit 3 when more than 250,000 units come more than once.
  */
 export async function findDuplicates(
   config: Config,

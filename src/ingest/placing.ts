@@ -48,7 +48,7 @@ export function placeClaims(
 }
 
 /** A stretch of days without what lies after the cut-off. */
-export function cutAt(range: DayRange, cutOff: number): DayRange {
+function cutAt(range: DayRange, cutOff: number): DayRange {
   return { from: range.from, to: Math.min(range.to, cutOff) };
 }
 

@@ -9,7 +9,7 @@ import { headerLine } from './separator.js';
 export type RowHandler = (cells: string[], line: number) => void;
 
 /** Longest row in bytes; what is longer has a quote that never closes. */
-export const longestRow = 1 << 20;
+const longestRow = 1 << 20;
 
 /**
  * Reads a CSV file (RFC 4180) row by row: separator comma, semicolon or tab, whichever the header line holds most of
