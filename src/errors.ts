@@ -7,7 +7,6 @@ export const exitCodes = {
   unusableSettings: 2,
   unusableInput: 3,
   someNotForecast: 4,
-  failOn: 5,
 } as const;
 
 /** One thing a reader can mend: what is wrong, where, and what to do about it. */

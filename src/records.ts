@@ -98,7 +98,6 @@ export type SetAsideCode =
   | 'repeat-return'
   | 'beyond-warranty'
   | 'before-delay'
-  | 'before-first-use'
   /** A plan for a period that is over. */
   | 'before-as-of';
 

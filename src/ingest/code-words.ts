@@ -27,7 +27,6 @@ export const codeWords: CodeWords = {
     'repeat-return': 'with another return of the same unit',
     'beyond-warranty': 'beyond the warranty',
     'before-delay': 'before the delay is over',
-    'before-first-use': 'before first use',
     'before-as-of': 'planned for a period that is over',
   },
 };

@@ -18,7 +18,7 @@ export function censorsReturns(files: readonly FileAccount[]): boolean {
   return files.some(({ codes }) => censoring.some((code) => (codes[code] ?? 0) > 0));
 }
 
-const censoring = ['beyond-warranty', 'before-delay', 'before-first-use'];
+const censoring = ['beyond-warranty', 'before-delay'];
 
 /** Rows of partials/files.hbs. */
 export function fileRows(files: readonly FileAccount[]) {
