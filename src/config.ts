@@ -2,7 +2,7 @@ import { addMonths, type PeriodKind, parseIsoDate } from './calendar.js';
 
 /** How the files of one kind of record are read. */
 export interface InputConfig {
-  /** Paths or patterns as written, relative to `Config.base`; `-` is standard input. Empty when there are none. */
+  /** Paths or patterns as written, relative to the settings file's folder; `-` is standard input. Empty when there are none. */
   readonly files: readonly string[];
   /** Our field name → the file's header, for headers that no synonym covers. Default none. */
   readonly columns: Readonly<Record<string, string>>;

@@ -8,7 +8,7 @@ export const recordFields = {
   ages: ['product', 'outcome', 'quantity', 'age', 'age_from', 'age_to'],
 } as const;
 
-/** Keys and names that the documentation reserves and this version does not have; they are refused, never ignored. */
+/** Keys and names that later versions will have; they are refused, never ignored. */
 export const notBuilt: ReadonlySet<string> = new Set([
   ...['segmentBy', 'backtest', 'query', 'season', 'driftMonths', 'discountTiming', 'discountRate'],
   ...['serviceLag', 'recordingLag', 'afterWarranty', 'warrantyFrom', 'afterReturn', 'lentShape'],
