@@ -8,7 +8,7 @@ import { readLeftCsv } from './read-csv.js';
 import { readDocument } from './read-json.js';
 import { readRecords } from './read-records.js';
 import { rejectColumns } from './rejects.js';
-import { fingerprint } from './run.js';
+import { digestOf } from './run.js';
 import { runSchema } from './run-schema.js';
 
 /** The files that `reopen` reads where they are there, by name within the folder. */
@@ -70,7 +70,7 @@ function checkHashes(files: ReadonlyMap<string, string>): void {
   if (!files.has('run.json')) return;
   for (const { file, sha256 } of reopenRun(files).outputs) {
     if (!reopenedFiles.some((name) => name === file)) continue;
-    if (fingerprint(textOf(files, file)).sha256 === sha256) continue;
+    if (digestOf(textOf(files, file)).sha256 === sha256) continue;
     throw alteredFile(file, `invalid ${file}, it was altered after the run that run.json describes`);
   }
 }

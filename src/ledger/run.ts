@@ -27,13 +27,13 @@ export function runDocument({ version, command, config, files, outputs }: RunFac
       .map(({ file, role, bytes, sha256 }) => ({ file, role, bytes, sha256 }))
       .sort((a, b) => compareText(`${a.file}\n${a.role}`, `${b.file}\n${b.role}`)),
     outputs: [...outputs]
-      .map(([file, content]) => ({ file, ...fingerprint(content) }))
+      .map(([file, content]) => ({ file, ...digestOf(content) }))
       .sort((a, b) => compareText(a.file, b.file)),
   };
 }
 
 /** Size in bytes (UTF-8) and SHA-256 in hex. */
-export function fingerprint(content: string | Uint8Array): { bytes: number; sha256: string } {
+export function digestOf(content: string | Uint8Array): { bytes: number; sha256: string } {
   const bytes = Buffer.from(content as string);
   return { bytes: bytes.length, sha256: createHash('sha256').update(bytes).digest('hex') };
 }
