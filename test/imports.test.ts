@@ -39,7 +39,7 @@ const broken: Readonly<Record<string, readonly (readonly [path: string, text: st
     ['families/a.ts', "import type { Cell } from '../records.js';"],
     ['families/a.ts', "import type { Config } from '../config.js';"],
   ],
-  'only cli/ is imported by nobody else': [
+  'cli/ is imported by nobody': [
     ['pipeline.ts', "import { realEffects } from './cli/effects.js';"],
     ['ledger/a.ts', "import { write } from '../cli/files.js';"],
   ],

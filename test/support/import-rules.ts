@@ -83,7 +83,7 @@ export const rules: readonly Rule[] = [
         : [],
   },
   {
-    name: 'only cli/ is imported by nobody else',
+    name: 'cli/ is imported by nobody',
     reason: 'the real world comes in through Effects, so that the library stays pure',
     breaches: (file) => (folderOf(file.path) === 'cli' ? [] : imported(file, (to) => folderOf(to) === 'cli')),
   },
