@@ -14,7 +14,9 @@ export function glance(input: ReportInput, products: readonly ProductParts[]) {
     horizon: products.map(({ forecast }) => forecast?.periods.at(-1)?.cumulative),
     until: products.map(({ forecast }) => forecast?.untilWarrantyEnds),
   };
-  const [next, horizon, until] = Object.values(answersOf).map((counts) => answers(counts, levels[0] ?? 0));
+  const next = answers(answersOf.next, levels[0] ?? 0);
+  const horizon = answers(answersOf.horizon, levels[0] ?? 0);
+  const until = answers(answersOf.until, levels[0] ?? 0);
   const costs = products.map(({ forecast }) => horizonCost(forecast));
   const money = moneyColumn(costs.map((cost) => cost?.expectedCost ?? null));
   const share = ({ table }: ProductParts) => (table.units === 0 ? null : table.returns / table.units);
@@ -29,7 +31,7 @@ export function glance(input: ReportInput, products: readonly ProductParts[]) {
       returns: countText(parts.table.returns),
       returnedShare: shareText(share(parts)),
       missing: parts.missing !== null,
-      answers: [next?.[i], horizon?.[i], ...(limited ? [until?.[i]] : [])].map((answer) => answer ?? null),
+      answers: [next[i], horizon[i], ...(limited ? [until[i]] : [])].map((answer) => answer ?? null),
       cost: money(costs[i]?.expectedCost ?? null, costs[i]?.currency ?? null),
     })),
     forecastMade: input.forecast !== null,
