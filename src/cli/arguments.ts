@@ -56,7 +56,7 @@ type Options = Readonly<Record<string, string | string[] | boolean | undefined>>
 
 function describeProgram(version: string, action: (command: CommandName, options: Options) => void): Command {
   const program = new Command('returnfall')
-    .description(programHelp.description)
+    .description(programHelp)
     .usage('COMMAND [options]')
     .version(version, '--version', 'print the version')
     .helpOption('-h, --help', 'print this help')

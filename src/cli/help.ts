@@ -21,10 +21,9 @@ export const unbuiltCommands = [
   'sql',
 ] as const;
 
-export const programHelp = {
-  description:
-    'Forecasts warranty returns, month by month and with intervals, from shipment and return records.',
-} as const;
+/** What the program does, in a sentence. */
+export const programHelp =
+  'Forecasts warranty returns, month by month and with intervals, from shipment and return records.';
 
 /** What follows the list of options: examples to copy, and what an exit code means. */
 export function commandHelp(command: CommandName | null): string {

@@ -94,6 +94,6 @@ function parameterName(family: string, parameter: string): string {
 /** The scale of some families is an age; lognormal and loglogistic are set on the logarithm of age. */
 function parameterUnit(family: string, parameter: string, ages: string): string {
   if (['lognormal', 'loglogistic'].includes(family) && parameter !== 'atRisk') return `(of log ${ages})`;
-  const ofAge = ['exponential', 'weibull', 'gamma', 'birnbaum-saunders'].includes(family);
+  const ofAge = ['exponential', 'weibull', 'gamma'].includes(family);
   return parameter === 'scale' && ofAge ? ages : '';
 }
