@@ -185,6 +185,7 @@ function ageGroup(
   return { outcome, from, to, exact, quantity };
 }
 
-function readJson<T>(name: string): T {
+/** The content of a file of this folder. */
+export function readJson<T>(name: string): T {
   return JSON.parse(readFileSync(new URL(name, import.meta.url), 'utf8')) as T;
 }
