@@ -6,7 +6,7 @@ import { daysPerMonth } from '../calendar.js';
 import type { Curve, FitProduct, NonparametricPoint } from '../records.js';
 import { frame, roomFor, svgNumber, type Tick } from './axis.js';
 import { candidateName, isChosen } from './candidates.js';
-import { curveTable, intervalLevel, pointRows } from './curves-table.js';
+import { curveTable, pointRows } from './curves-table.js';
 import { measureText, percentText, tickText } from './numbers.js';
 import { plural } from './period-words.js';
 
@@ -30,7 +30,7 @@ export function curvesChart(id: string, fit: FitProduct, ageUnit: string | null)
     chosen: chosen.map((curve) => ({ name: candidateName(curve), path: curvePath(curve, place) })),
     points: fit.nonparametric.map((point) => pointMark(point, place, unit)),
     units: plural(unit),
-    level: percentText(intervalLevel),
+    level: percentText(fit.nonparametricLevel),
     warranty: warrantyMark(fit, place),
     radius: fit.nonparametric.length > 60 ? 1.75 : 3,
     pointRows: pointRows(fit, place.unitLength),
@@ -110,7 +110,7 @@ function legend(fit: FitProduct, chosen: readonly Curve[], others: readonly Curv
   return [
     ...entry(
       'point',
-      `nonparametric estimate with its ${percentText(intervalLevel)} interval`,
+      `nonparametric estimate with its ${percentText(fit.nonparametricLevel)} interval`,
       fit.nonparametric.length > 0,
     ),
     ...chosen.flatMap((curve) => entry('chosen', `${candidateName(curve)}, chosen`, true)),
@@ -126,6 +126,6 @@ function describe(fit: FitProduct, { unitLength }: Placing, units: string): stri
   if (last === undefined) return `Lines show the share of units returned by age in ${units}.${fitted}`;
   const age = `${measureText(last.age / unitLength)} ${units}`;
   const range = `${percentText(last.lower)} to ${percentText(last.upper)}`;
-  const share = `${percentText(last.probability)}, ${percentText(intervalLevel)} interval ${range}`;
+  const share = `${percentText(last.probability)}, ${percentText(fit.nonparametricLevel)} interval ${range}`;
   return `Points show the share of units returned by age: by ${age} of age ${share}.${fitted}`;
 }

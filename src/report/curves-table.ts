@@ -3,9 +3,6 @@ import type { FitProduct } from '../records.js';
 import { candidateName } from './candidates.js';
 import { ageColumn, countText, percentColumn } from './numbers.js';
 
-/** Level of the interval of the nonparametric estimate. */
-export const intervalLevel = 0.95;
-
 /** Enough to follow a curve by its numbers. */
 const mostCurveRows = 30;
 
