@@ -1,5 +1,6 @@
 import { isoDate } from '../calendar.js';
 import type { Config } from '../config.js';
+import { productCounts } from '../counts.js';
 import type { Intake, IntakeDocument, IntakeProduct, ProductRecords } from '../records.js';
 import { cutOffOrOpen } from './asof.js';
 import { nevadaTable } from './nevada.js';
@@ -19,20 +20,9 @@ export function intakeDocument(config: Config, intake: Intake): IntakeDocument {
 }
 
 function intakeProduct(config: Config, records: ProductRecords): IntakeProduct {
-  const { product, segment, resolution, cohorts, ages } = records;
-  const aged = (outcome: 'returned' | 'surviving') =>
-    unitsIn(ages.filter((group) => group.outcome === outcome));
-  const units = cohorts.reduce((sum, { shipped }) => sum + shipped, 0) + unitsIn(ages);
-  const returns = unitsIn(records.returned) + aged('returned');
-  const withdrawn = unitsIn(records.withdrawn);
+  const { resolution, ages } = records;
   return {
-    product,
-    segment,
-    resolution,
-    units,
-    returns,
-    withdrawn,
-    survivors: units - returns - withdrawn,
+    ...productCounts(records),
     ...shipDates(records),
     planned: records.planned.map(({ from, to, shipped }) => ({
       from: isoDate(from),
@@ -52,8 +42,4 @@ function shipDates({ cohorts }: ProductRecords): Pick<IntakeProduct, 'firstShipp
     firstShipped: first === undefined ? null : isoDate(first.from),
     lastShipped: last === undefined ? null : isoDate(last.to - 1),
   };
-}
-
-function unitsIn(groups: readonly { readonly quantity: number }[]): number {
-  return groups.reduce((sum, { quantity }) => sum + quantity, 0);
 }
