@@ -43,29 +43,45 @@ export function precisionFor(family: Family, free: Float64Array): Precision {
 export function ageGrid(knots: Iterable<number>, delay: number, precision: Precision): AgeGrid {
   const beyond = [...new Set(knots)].filter((knot) => knot > delay && knot < Infinity);
   const sorted = Float64Array.from([delay, ...beyond]).sort();
-  const nodes: { age: number; weight: number; x: number }[] = [];
+  const nodes: Nodes = { age: [], left: [], right: [], middle: [] };
   const firstNode = new Int32Array(sorted.length);
   for (let i = 0; i + 1 < sorted.length; i++) {
-    firstNode[i] = nodes.length;
-    const [a, b] = [(sorted[i] as number) - delay, (sorted[i + 1] as number) - delay];
-    for (const [from, to, rule] of pieces(a, b, precision)) {
-      for (let j = 0; j < rule.nodes.length; j++) {
-        const age = from + (to - from) * (rule.nodes[j] as number);
-        nodes.push({ age, weight: (to - from) * (rule.weights[j] as number), x: (age - a) / (b - a) });
-      }
-    }
+    firstNode[i] = nodes.age.length;
+    addNodes((sorted[i] as number) - delay, (sorted[i + 1] as number) - delay, precision, nodes);
   }
-  firstNode[sorted.length - 1] = nodes.length;
+  firstNode[sorted.length - 1] = nodes.age.length;
   return {
     delay,
     knots: sorted,
     firstNode,
-    age: Float64Array.from(nodes, (n) => n.age),
-    logAge: Float64Array.from(nodes, (n) => Math.log(n.age)),
-    left: Float64Array.from(nodes, (n) => n.weight * (1 - n.x)),
-    right: Float64Array.from(nodes, (n) => n.weight * n.x),
-    middle: Float64Array.from(nodes, (n) => 4 * n.weight * n.x * (1 - n.x)),
+    age: Float64Array.from(nodes.age),
+    logAge: Float64Array.from(nodes.age).map(Math.log),
+    left: Float64Array.from(nodes.left),
+    right: Float64Array.from(nodes.right),
+    middle: Float64Array.from(nodes.middle),
   };
+}
+
+interface Nodes {
+  readonly age: number[];
+  readonly left: number[];
+  readonly right: number[];
+  readonly middle: number[];
+}
+
+/** Adds the nodes of an interval with their three weights. */
+function addNodes(a: number, b: number, precision: Precision, nodes: Nodes): void {
+  for (const [from, to, rule] of pieces(a, b, precision)) {
+    for (let j = 0; j < rule.nodes.length; j++) {
+      const age = from + (to - from) * (rule.nodes[j] as number);
+      const weight = (to - from) * (rule.weights[j] as number);
+      const x = (age - a) / (b - a);
+      nodes.age.push(age);
+      nodes.left.push(weight * (1 - x));
+      nodes.right.push(weight * x);
+      nodes.middle.push(4 * weight * x * (1 - x));
+    }
+  }
 }
 
 /** Index of the knot at `age`, which must be one; ages at or below the delay are knot 0. */
@@ -79,12 +95,21 @@ export function knotAt(grid: AgeGrid, age: number): number {
   return low;
 }
 
+const zeroRules = new Map<number, Rule>();
+
+/** The rule for the piece at age 0, made once. */
+function atZero(step: number): Rule {
+  const known = zeroRules.get(step) ?? doubleExponential(step);
+  zeroRules.set(step, known);
+  return known;
+}
+
 /** Pieces of [a, b] short enough for one rule each: a density may go like any power of age, so their ends keep a ratio. */
 function pieces(a: number, b: number, precision: Precision): [number, number, Rule][] {
   const { ratio, shape, tolerance, step } = precisions[precision];
   if (a === 0) {
     const first = b / 8;
-    return [[0, first, doubleExponential(step)], ...pieces(first, b, precision)];
+    return [[0, first, atZero(step)], ...pieces(first, b, precision)];
   }
   const count = Math.ceil(Math.log(b / a) / Math.log(ratio) - 1e-9);
   const rule = gaussLegendre(nodesFor((shape * Math.log(b / a)) / count, tolerance));

@@ -13,6 +13,8 @@ export interface Window {
   readonly rampFrom: number;
   readonly end: number;
   readonly weight: (age: number) => number;
+  /** True when the weight is quadratic between its knots, false when it is linear. */
+  readonly curved: boolean;
   /** Two windows with the same key are equal. */
   readonly key: string;
 }
@@ -26,6 +28,7 @@ export function returnedBy(shipped: DayRange, until: number, cap: number): Windo
     rampFrom: Math.min(near, cap),
     end: Math.min(far, cap),
     weight: (age) => clamp((far - age) / (far - near)),
+    curved: false,
     key: `b ${near} ${far} ${far <= cap ? '' : cap}`,
   };
 }
@@ -40,6 +43,7 @@ export function returnedWithin(shipped: DayRange, range: DayRange, cap: number):
     rampFrom: range.from - shipped.to,
     end: after.end,
     weight: (age) => after.weight(age) - before.weight(age),
+    curved: false,
     key: `c ${range.from - shipped.from} ${after.key}`,
   };
 }
@@ -63,6 +67,7 @@ export function returnedBeforeExit(shipped: DayRange, range: DayRange, cap: numb
           square(near - age)) /
           widths,
       ),
+    curved: true,
     key: `w ${near} ${corners[0]} ${corners[1]} ${far} ${far <= cap ? '' : cap}`,
   };
 }
@@ -75,6 +80,7 @@ export function returnedUntilAge(age: number): Window {
     rampFrom: age,
     end: age,
     weight: (t) => (t < age ? 1 : 0),
+    curved: false,
     key: `a ${age}`,
   };
 }
@@ -87,6 +93,7 @@ export function hat(before: number, age: number, after: number): Window {
     rampFrom: before,
     end: after,
     weight: (t) => clamp(t < age ? (t - before) / (age - before) : (after - t) / (after - age)),
+    curved: false,
     key: `h ${age}`,
   };
 }
@@ -112,41 +119,53 @@ export function layWindows(windows: readonly Window[], grid: AgeGrid): LaidWindo
   const full = new Int32Array(windows.length);
   const firstRow = new Int32Array(windows.length + 1);
   const firstInterval = new Int32Array(windows.length);
-  const rows: [number, number, number][] = [];
+  const rows: Rows = { left: [], right: [], middle: [] };
   windows.forEach((window, w) => {
     full[w] = window.full > grid.delay ? knotAt(grid, window.full) : 0;
-    let interval = full[w] as number;
-    const last = window.end > grid.delay ? knotAt(grid, window.end) : 0;
-    while (interval < last && isZero(coefficients(window, grid, interval))) interval++;
-    firstInterval[w] = interval;
-    firstRow[w] = rows.length;
-    for (; interval < last; interval++) rows.push(coefficients(window, grid, interval));
+    firstRow[w] = rows.left.length;
+    firstInterval[w] = layOne(window, grid, full[w] as number, rows);
   });
-  firstRow[windows.length] = rows.length;
-  const column = (i: 0 | 1 | 2) => Float64Array.from(rows, (row) => row[i]);
-  const curved = rows.some((row) => row[2] !== 0);
+  firstRow[windows.length] = rows.left.length;
   return {
     count: windows.length,
     full,
     firstRow,
     firstInterval,
-    left: column(0),
-    right: column(1),
-    middle: column(2),
-    curved,
+    left: Float64Array.from(rows.left),
+    right: Float64Array.from(rows.right),
+    middle: Float64Array.from(rows.middle),
+    curved: rows.middle.some((coefficient) => coefficient !== 0),
   };
 }
 
-/** Values at the interval's ends, and what the middle has above their mean. */
-function coefficients(window: Window, grid: AgeGrid, interval: number): [number, number, number] {
-  const [a, b] = [grid.knots[interval] as number, grid.knots[interval + 1] as number];
-  const [left, right] = [window.weight(a), window.weight(b)];
-  const bulge = window.weight(0.5 * (a + b)) - 0.5 * (left + right);
-  return [left, right, Math.abs(bulge) < 1e-12 ? 0 : bulge];
+interface Rows {
+  readonly left: number[];
+  readonly right: number[];
+  readonly middle: number[];
 }
 
-function isZero(row: readonly number[]): boolean {
-  return row.every((coefficient) => coefficient === 0);
+/**
+ * Adds the rows of one window: its weights at the ends of each interval, and what the middle has above their mean.
+ * @returns the first interval that has a row; those of weight 0 before it are left out.
+ */
+function layOne(window: Window, grid: AgeGrid, from: number, rows: Rows): number {
+  const last = window.end > grid.delay ? knotAt(grid, window.end) : 0;
+  let first = from;
+  let left = last > from ? window.weight(grid.knots[from] as number) : 0;
+  for (let interval = from; interval < last; interval++) {
+    const [a, b] = [grid.knots[interval] as number, grid.knots[interval + 1] as number];
+    const right = window.weight(b);
+    const bulge = window.curved ? window.weight(0.5 * (a + b)) - 0.5 * (left + right) : 0;
+    const middle = Math.abs(bulge) < 1e-12 ? 0 : bulge;
+    if (interval === first && left === 0 && right === 0 && middle === 0) first++;
+    else {
+      rows.left.push(left);
+      rows.right.push(right);
+      rows.middle.push(middle);
+    }
+    left = right;
+  }
+  return first;
 }
 
 function clamp(x: number): number {
