@@ -35,6 +35,7 @@ export function logLikelihood(terms: Terms, laid: LaidTerms, family: Family): Lo
   const integrals = integralsOn(laid.grid, k, laid.returned.curved || laid.kept.curved);
   const jet = new Float64Array(Math.max(16, jetSize(k)));
   const other = new Float64Array(jet.length);
+  const logTo = Float64Array.from(terms.aged, (group) => Math.log(group.to));
   const eachWindow = (windows: LaidWindows, first: number, wanted: 'inside' | 'outside', visit: Visit) => {
     for (let w = 0; w < windows.count; w++) {
       windowProbability(windows, w, integrals, wanted, jet);
@@ -51,7 +52,7 @@ export function logLikelihood(terms: Terms, laid: LaidTerms, family: Family): Lo
       eachWindow(laid.kept, laid.returned.count, 'outside', visit);
     }
     for (let a = 0; a < terms.aged.length; a++) {
-      agedTerm(terms.aged[a] as AgeGroup, jets, k, jet, other);
+      agedTerm(terms.aged[a] as AgeGroup, logTo[a] as number, jets, k, jet, other);
       visit(first + a, jet);
     }
   };
@@ -113,15 +114,29 @@ function addJet(
 }
 
 /** The jet of the log likelihood of one unit of a group, ages counted from the end of the delay. */
-function agedTerm(group: AgeGroup, jets: Jets, k: number, out: Float64Array, other: Float64Array): void {
-  if (group.outcome === 'surviving') jets.logSurvival(group.to, Math.log(group.to), out);
-  else if (group.exact) jets.logDensity(group.to, Math.log(group.to), out);
-  else betweenJet(group, jets, k, out, other);
+function agedTerm(
+  group: AgeGroup,
+  logTo: number,
+  jets: Jets,
+  k: number,
+  out: Float64Array,
+  other: Float64Array,
+): void {
+  if (group.outcome === 'surviving') jets.logSurvival(group.to, logTo, out);
+  else if (group.exact) jets.logDensity(group.to, logTo, out);
+  else betweenJet(group, logTo, jets, k, out, other);
 }
 
 /** log(F(b) − F(a)) = log S(a) + log(1 − exp(log S(b) − log S(a))); S(0) is 1. */
-function betweenJet(group: AgeGroup, jets: Jets, k: number, out: Float64Array, other: Float64Array): void {
-  jets.logSurvival(group.to, Math.log(group.to), other);
+function betweenJet(
+  group: AgeGroup,
+  logTo: number,
+  jets: Jets,
+  k: number,
+  out: Float64Array,
+  other: Float64Array,
+): void {
+  jets.logSurvival(group.to, logTo, other);
   if (group.from > 0) jets.logSurvival(group.from, Math.log(group.from), out);
   else out.fill(0, 0, jetSize(k));
   const drop = (other[0] as number) - (out[0] as number);
